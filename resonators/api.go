@@ -124,3 +124,12 @@ type ImpedanceAt struct {
 	Hz float64
 	Z  complex128
 }
+
+// Sensitivity is what one step of one dimension does.
+type Sensitivity struct {
+	Dimension string  // in words: "cavity depth", "neck length", …
+	Key       string  // the project file's key, as "cavity_mm"
+	Step      float64 // in SI
+	F0PerStep float64 // Hz
+	QPerStep  float64
+}

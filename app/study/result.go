@@ -1,0 +1,128 @@
+// Package study turns a project into results: a pure function of the project,
+// staged, cancellable, its stages reused while their own inputs have not
+// changed. Window, figures, papers and verbs read the same Result, so they
+// cannot disagree.
+package study
+
+import (
+	"stillroom/acoustics"
+	"stillroom/app/project"
+	"stillroom/resonators"
+)
+
+// Options say how far a study goes. The zero value of a field is its default.
+type Options struct {
+	FromHz, ToHz float64 // range of the level curves, default 16…250 Hz
+	Points       int     // number of log-spaced points, both ends included, default 200
+	ModesToHz    float64 // modes are listed up to here, default 200 Hz
+}
+
+// Stage says how much of a Result is there.
+type Stage int
+
+// Stages in their order. A Result of a stage holds all that the earlier ones hold.
+const (
+	StageModes   Stage = iota + 1 // air, modes, damping, bare level, counts
+	StageLevel                    // absorbers and the treated level
+	StageTreated                  // poles of the treated room: complete
+)
+
+// Result is all that is computed of a project. It is immutable: nobody changes
+// a Result or a slice of one.
+type Result struct {
+	Project project.Project
+	Options Options
+	Stage   Stage
+
+	Air      acoustics.Air
+	Room     acoustics.Room
+	VolumeM3 float64
+	AreaM2   float64
+	// SchroederHz is 2000·√(T/V), T by Sabine with air, mean of 500 and 1000 Hz.
+	SchroederHz float64
+
+	Modes  []ModeRow // rising in frequency, up to Options.ModesToHz
+	Bands  []BandRow // third octaves 16 … 250 Hz
+	Levels Levels
+
+	Absorbers []AbsorberRow // in the order of the project's absorbers
+	// AbsorberPoles are the poles of the treated room that grew from an
+	// absorber's own resonance. From StageTreated on.
+	AbsorberPoles []PoleRow
+	// PolesCounted and PolesFound: the argument principle's count and what was followed.
+	PolesCounted, PolesFound int
+
+	// Findings are plain sentences, worst first.
+	Findings []Finding
+	// Cautions are limits of the models that apply to this project, plain sentences.
+	Cautions []string
+
+	stages stages
+}
+
+// ModeRow is one mode of the bare room and what becomes of it.
+type ModeRow struct {
+	Mode       acoustics.DampedMode
+	Oscillator acoustics.Oscillator
+	Wavelength float64   // m
+	LevelDB    []float64 // own peak at each seat; NaN where it is nothing
+	LimitS     float64   // longest T60 allowed at its frequency
+	Problem    bool
+	// Rank is 1 for the worst problem, 2 for the next…; 0 where it is none.
+	Rank int
+	// Treated is the pole this mode became (none where nothing treats the room,
+	// or before StageTreated, or where it rings for less than 0.02 s).
+	Treated []PoleRow
+	// Pair are the absorber poles that belong with this mode as a tuned pair,
+	// shown beside Treated in window and papers.
+	Pair []PoleRow
+	// Absorbers are the indices of the project's absorbers assigned to this
+	// mode: those whose band of action holds its frequency and that couple to it.
+	Absorbers []int
+	// Strongest says in words a joiner understands where its pressure is greatest.
+	Strongest string
+}
+
+// PoleRow is one damped oscillation of the treated room.
+type PoleRow struct {
+	Oscillator acoustics.Oscillator
+	LevelDB    []float64 // per seat, NaN where it is nothing
+	Absorber   int       // index of the absorber it grew from; −1 for a mode's pole
+	LimitS     float64
+}
+
+// BandRow is one third-octave band's mode count.
+type BandRow struct {
+	Nominal              string
+	CentreHz, LoHz, HiHz float64
+	Count                int     // modes in the band
+	Asymptote            float64 // three-term asymptote's difference over the band
+}
+
+// Levels are the level curves, dB re the free field of one unit-gain
+// loudspeaker at 1 m, indexed [seat][frequency].
+type Levels struct {
+	Hz            []float64
+	Bare, Treated [][]float64 // Treated equals Bare where there is no absorber; nil before StageLevel
+}
+
+// AbsorberRow is one absorber of the project.
+type AbsorberRow struct {
+	ID, Kind string
+	Design   resonators.Absorber
+	Report   resonators.Report
+	Units    int     // as placed
+	AreaM2   float64 // of all units together
+	// Target is the index in Modes of the mode it is nearest tuned to and couples
+	// with; −1 where there is none.
+	Target int
+	// Derivatives of f0 and Q with its dimensions.
+	Sensitivities []resonators.Sensitivity
+}
+
+// Finding is one sentence of the findings line, and what it is about.
+type Finding struct {
+	Text  string
+	Mode  int // index in Modes, −1 for none
+	Worst bool
+}
