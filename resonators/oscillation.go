@@ -1,0 +1,105 @@
+package resonators
+
+import (
+	"math"
+
+	"stillroom/acoustics"
+)
+
+// The range in which an absorber's own resonance is looked for, Hz.
+const (
+	lowestHz  = 5.0
+	highestHz = 5000.0
+	// scanSteps divides it evenly in log f, 2 % a step: far finer than
+	// the distance from a resonance to the antiresonance above it.
+	scanSteps = 350
+)
+
+// equivalent is the oscillator that an impedance is near its resonance.
+type equivalent struct {
+	oscillator acoustics.Oscillator
+	mass       float64 // ½·dX/dω, in the impedance's unit times s
+	stiffness  float64 // ω0²·mass
+	resistance float64
+}
+
+// resonance returns the lowest frequency between 5 Hz and 5 kHz at which the
+// reactance of a face rises through zero, from stiffness to mass, and false
+// where there is none. The impedance is the face's own (a neck box with its
+// outer end correction). Porous layers have none: their crossings are those of
+// a quarter wave.
+func resonance(a Absorber, air acoustics.Air) (hz float64, exists bool) {
+	if _, broad := a.(Porous); broad {
+		return 0, false
+	}
+	reactance := func(f float64) float64 {
+		return imag(a.Specific(complex(2*math.Pi*f, 0), air))
+	}
+	ratio := math.Pow(highestHz/lowestHz, 1.0/scanSteps)
+	lo, xlo := lowestHz, reactance(lowestHz)
+	for i := 1; i <= scanSteps; i++ {
+		hi := lowestHz * math.Pow(ratio, float64(i))
+		xhi := reactance(hi)
+		if xlo < 0 && xhi >= 0 {
+			return crossing(reactance, lo, hi), true
+		}
+		lo, xlo = hi, xhi
+	}
+	return 0, false
+}
+
+// crossing returns the zero of a rising function between lo and hi by bisection
+// to the last bit that matters (2^−45 of the interval).
+func crossing(f func(float64) float64, lo, hi float64) float64 {
+	for range 45 {
+		mid := 0.5 * (lo + hi)
+		if f(mid) < 0 {
+			lo = mid
+		} else {
+			hi = mid
+		}
+	}
+	return 0.5 * (lo + hi)
+}
+
+// equivalentOf returns the oscillator of the face, its mass, stiffness and
+// resistance those of the specific impedance (over ρc),
+//
+//	Q = (ω0/2R)·dX/dω,  ζ = 1/(2Q),  δ = ζ·ω0
+//	M = ½·dX/dω,  K = ω0²·M
+//
+// at the frequency where X = 0; false where the absorber is broadband.
+func equivalentOf(a Absorber, air acoustics.Air) (equivalent, bool) {
+	f0, ok := resonance(a, air)
+	if !ok {
+		return equivalent{}, false
+	}
+	const h = 1e-4 // relative; the difference is right to h²
+	w0 := 2 * math.Pi * f0
+	slope := imag(a.Specific(complex(w0*(1+h), 0), air)-a.Specific(complex(w0*(1-h), 0), air)) / (2 * h * w0)
+	r := real(a.Specific(complex(w0, 0), air))
+	e := equivalent{
+		mass:       slope / 2,
+		stiffness:  sq(w0) * slope / 2,
+		resistance: r,
+	}
+	// ζ = R/(ω0·dX/dω), so δ = R/(dX/dω), without dividing by R.
+	e.oscillator = acoustics.Oscillator{Natural: f0, Decay: r / slope}
+	return e, true
+}
+
+// Oscillator returns the absorber as a damped oscillator, and false where it is
+// broadband. size is that of one unit, m.
+func Oscillator(a Absorber, air acoustics.Air, size [2]float64) (acoustics.Oscillator, bool) {
+	e, ok := equivalentOf(fitted(a, size), air)
+	return e.oscillator, ok
+}
+
+// bandOfAction returns the band f0·(√(1+ζ²) ∓ ζ) in Hz: where a simple
+// oscillator takes half of its greatest power or more.
+func bandOfAction(o acoustics.Oscillator) [2]float64 {
+	z := o.DampingRatio()
+	s := math.Sqrt(1 + z*z)
+	// s − z written as 1/(s + z), which keeps its digits for large ζ.
+	return [2]float64{o.Natural / (s + z), o.Natural * (s + z)}
+}

@@ -1,0 +1,75 @@
+package resonators
+
+import (
+	"math"
+
+	"stillroom/acoustics"
+)
+
+// Placement is where an absorber's units are: the centre of the first, the
+// size of one, and how many stand beside it in the direction of the rising first
+// coordinate, touching.
+type Placement struct {
+	Surface acoustics.Surface
+	Centre  [2]float64 // m
+	Size    [2]float64 // m
+	Units   int
+}
+
+// tileSide is the greatest side of a tile, m: a sixth of the wave at 250 Hz,
+// the upper end of the range in which rooms are treated mode by mode.
+const tileSide = 343.0 / 250 / 6
+
+// PlaceUnits returns the absorber's units as the room knows them. A neck box is
+// one unit, its mouths as one opening at its centre; a panel is one unit whole,
+// since its sheet moves as one; every other wide kind is cut into equal tiles.
+func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoustics.Unit {
+	if at.Units < 1 {
+		panic("resonators: a placement has one unit or more")
+	}
+	a = fitted(a, at.Size)
+	natural, _ := resonance(a, air)
+	var units []acoustics.Unit
+	for i := range at.Units {
+		centre := [2]float64{at.Centre[0] + float64(i)*at.Size[0], at.Centre[1]}
+		for _, p := range patches(a, acoustics.Patch{Surface: at.Surface, Centre: centre, Size: at.Size}) {
+			area := p.Size[0] * p.Size[1]
+			units = append(units, acoustics.Unit{
+				Patch: p,
+				Impedance: func(omega complex128) complex128 {
+					return a.InRoom(omega, area, air)
+				},
+				Natural: natural,
+				Owner:   owner,
+			})
+		}
+	}
+	return units
+}
+
+// patches returns the pieces of one unit.
+func patches(a Absorber, whole acoustics.Patch) []acoustics.Patch {
+	switch v := a.(type) {
+	case Neck:
+		whole.MouthRadius, whole.Mouths = v.MouthRadius, v.Mouths
+		return []acoustics.Patch{whole}
+	case Panel:
+		return []acoustics.Patch{whole}
+	}
+	nu, nv := tiles(whole.Size[0]), tiles(whole.Size[1])
+	side := [2]float64{whole.Size[0] / float64(nu), whole.Size[1] / float64(nv)}
+	var out []acoustics.Patch
+	for i := range nu {
+		for j := range nv {
+			p := whole
+			p.Size = side
+			p.Centre[0] += (float64(i) - float64(nu-1)/2) * side[0]
+			p.Centre[1] += (float64(j) - float64(nv-1)/2) * side[1]
+			out = append(out, p)
+		}
+	}
+	return out
+}
+
+// tiles returns how many tiles a side (m) is cut into.
+func tiles(side float64) int { return max(1, int(math.Ceil(side/tileSide))) }

@@ -1,0 +1,92 @@
+package resonators
+
+import "math"
+
+// sample is what an integrand gives at one point: two values that are
+// integrated together, and how far from resonance the point is, in half widths
+// with sign.
+type sample struct {
+	value    [2]float64
+	detuning float64
+}
+
+// Nodes and weights of the 15-point Kronrod rule on −1…1 and of the 7-point
+// Gauss rule in it (every second node). Source: Piessens et al., QUADPACK,
+// 1983.
+var (
+	kronrodNodes = [8]float64{
+		0.991455371120812639206854697526329, 0.949107912342758524526189684047851,
+		0.864864423359769072789712788640926, 0.741531185599394439863864773280788,
+		0.586087235467691130294144691693013, 0.405845151377397166906606412076961,
+		0.207784955007898467600689403773245, 0,
+	}
+	kronrodWeights = [8]float64{
+		0.022935322010529224963732008058970, 0.063092092629978553290700663189204,
+		0.104790010322250183839876322541518, 0.140653259715525918745189590510238,
+		0.169004726639267902826583426598550, 0.190350578064785409913256402421014,
+		0.204432940075298892414161999234649, 0.209482141084727828012999174891714,
+	}
+	gaussWeights = [4]float64{
+		0.129484966168869693270611432679082, 0.279705391489276667901467771423780,
+		0.381830050505118944950369775488975, 0.417959183673469387755102040816327,
+	}
+)
+
+// deepest is how often an interval is halved at most.
+const deepest = 14
+
+// mean returns the means of the two values over lo…hi, each to about tol, from
+// the given number of equal panels on. A panel is halved while the two rules
+// disagree or while a resonance stands between two of its points that both see
+// it from farther than a half width, so that a narrow peak is not stepped over.
+func mean(lo, hi float64, panels int, tol float64, f func(x float64) sample) [2]float64 {
+	var sum [2]float64
+	width := (hi - lo) / float64(panels)
+	left := f(lo).detuning
+	for i := range panels {
+		a := lo + float64(i)*width
+		right := f(a + width).detuning
+		m := panelMean(a, a+width, left, right, tol, 0, f)
+		sum[0] += m[0]
+		sum[1] += m[1]
+		left = right
+	}
+	return [2]float64{sum[0] / float64(panels), sum[1] / float64(panels)}
+}
+
+func panelMean(lo, hi, left, right, tol float64, depth int, f func(float64) sample) [2]float64 {
+	var (
+		kronrod, gauss [2]float64
+		mid, half      = 0.5 * (lo + hi), 0.5 * (hi - lo)
+		before         = left
+		skipped        bool
+	)
+	for i := range 15 {
+		j := min(i, 14-i)
+		x := kronrodNodes[j] * half
+		if i < 7 {
+			x = -x
+		}
+		s := f(mid + x)
+		for v := range 2 {
+			kronrod[v] += 0.5 * kronrodWeights[j] * s.value[v]
+			if j%2 == 1 {
+				gauss[v] += 0.5 * gaussWeights[j/2] * s.value[v]
+			}
+		}
+		skipped = skipped || steppedOver(before, s.detuning)
+		before = s.detuning
+	}
+	skipped = skipped || steppedOver(before, right)
+	differ := max(math.Abs(kronrod[0]-gauss[0]), math.Abs(kronrod[1]-gauss[1])) > tol
+	if depth == deepest || !differ && !skipped {
+		return kronrod
+	}
+	centre := f(mid).detuning
+	a := panelMean(lo, mid, left, centre, tol, depth+1, f)
+	b := panelMean(mid, hi, centre, right, tol, depth+1, f)
+	return [2]float64{0.5 * (a[0] + b[0]), 0.5 * (a[1] + b[1])}
+}
+
+// steppedOver reports whether a resonance lies between two points unseen.
+func steppedOver(a, b float64) bool { return a < -1 && b > 1 }
