@@ -43,7 +43,7 @@ func normalOf(z complex128) float64 {
 func DiffuseAbsorption(a Absorber, hz, limit float64, air acoustics.Air) float64 {
 	omega := complex(2*math.Pi*hz, 0)
 	if l, ok := a.(layered); ok && l.extended() {
-		return extendedDiffuse(l, omega, limit, air)
+		return extendedDiffuse(l, omega, limit, angleTolerance, air)
 	}
 	return localDiffuse(a.Specific(omega, air), limit)
 }
@@ -87,8 +87,8 @@ func localDiffuse(z complex128, limit float64) float64 {
 }
 
 // extendedDiffuse returns Paris's integral where the cavity's wave runs on
-// sideways.
-func extendedDiffuse(l layered, omega complex128, limit float64, air acoustics.Air) float64 {
+// sideways, to about the tolerance tol.
+func extendedDiffuse(l layered, omega complex128, limit, tol float64, air acoustics.Air) float64 {
 	var (
 		front  = l.front(omega, air)
 		layers = l.cavity().at(omega, air)
@@ -100,7 +100,7 @@ func extendedDiffuse(l layered, omega complex128, limit float64, air acoustics.A
 		u0 = 0
 	}
 	panels := 1 + int(k*l.cavity().depth()/math.Pi)
-	m := mean(u0, 1, panels, angleTolerance, func(u float64) sample {
+	m := mean(u0, 1, panels, tol, func(u float64) sample {
 		z := (front + 1/layers.admittance(k*k*(1-u*u), true)) * complex(over*u, 0)
 		r, x := max(real(z), 0), imag(z)
 		return sample{

@@ -48,23 +48,31 @@ func thirdOctaves(a Absorber, air acoustics.Air, limit float64) []ThirdOctave {
 // bandMean returns the means over log f of the normal and the diffuse
 // coefficient between two frequencies.
 func bandMean(a Absorber, air acoustics.Air, limit, lo, hi float64) [2]float64 {
-	l, isLayered := a.(layered)
-	panels := 1
+	var (
+		l, isLayered = a.(layered)
+		local        = !isLayered || !l.extended()
+		from, to     = math.Log(lo), math.Log(hi)
+		panels       = 1
+	)
 	if isLayered {
 		// One panel for each half wave that the cavity gains over the band.
 		panels += int(2 * (hi - lo) * l.cavity().depth() / air.SpeedOfSound)
 	}
-	local := !isLayered || !l.extended()
-	return mean(math.Log(lo), math.Log(hi), panels, bandTolerance, func(x float64) sample {
-		omega := complex(2*math.Pi*math.Exp(x), 0)
-		z := a.Specific(omega, air)
+	m := mean(from, to, panels, bandTolerance, func(x float64) sample {
+		z := a.Specific(complex(2*math.Pi*math.Exp(x), 0), air)
 		s := sample{detuning: imag(z) / (1 + real(z))}
 		s.value[0] = normalOf(z)
 		if local {
 			s.value[1] = localDiffuse(z, limit)
-		} else {
-			s.value[1] = extendedDiffuse(l, omega, limit, air)
 		}
 		return s
 	})
+	if !local {
+		// Resonances of the single angles have averaged out already.
+		m[1] = mean(from, to, panels, bandTolerance, func(x float64) sample {
+			omega := complex(2*math.Pi*math.Exp(x), 0)
+			return sample{value: [2]float64{extendedDiffuse(l, omega, limit, bandTolerance, air)}}
+		})[0]
+	}
+	return m
 }

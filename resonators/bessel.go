@@ -41,15 +41,14 @@ func besselRatio(y complex128) complex128 {
 			return (2*hankelQuotient(x)/x - 1) / y
 		}
 	}
-	// q_n = J_n/(x·J_{n−1}) = 1/(2n − y·q_{n+1}); the tail dies as (r/2n)^2n.
-	n := 20 + int(1.2*r)
-	var q complex128
-	for ; n > 2; n-- {
-		q = 1 / (complex(float64(2*n), 0) - y*q)
+	// q_n = J_n/(x·J_{n−1}) = 1/(2n − y·q_{n+1}), carried as q = a/b; the tail
+	// left out dies as (r/2n)^2n and b stays below 1e150.
+	var a, b complex128 = 0, 1
+	for n := 20 + int(1.2*r); n > 1; n-- {
+		a, b = b, complex(float64(2*n), 0)*b-y*a
 	}
-	q2 := 1 / (4 - y*q)
-	q1 := 1 / (2 - y*q2)
-	return q1 * q2
+	// q_2 = a/b and q_1 = b/(2b − y·a), so their product is:
+	return a / (2*b - y*a)
 }
 
 // hankelQuotient returns J1(x)/J0(x) for large |x| deep in the lower half

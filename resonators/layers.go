@@ -97,6 +97,12 @@ func (s slabs) admittance(lateral float64, clamp bool) complex128 {
 	var y complex128
 	for i := s.n - 1; i >= 0; i-- {
 		l := &s.layer[i]
+		if k, z := real(l.k), real(l.zc); y == 0 && imag(l.k) == 0 && imag(l.zc) == 0 && k*k > lateral {
+			// Air before the wall on the real axis: Y is a plain reactance.
+			kz := math.Sqrt(k*k - lateral)
+			y = complex(0, math.Tan(kz*l.thickness)*kz/(k*z))
+			continue
+		}
 		zc, kz := l.zc, l.k
 		if lateral != 0 {
 			kz = cmplx.Sqrt(l.k*l.k - complex(lateral, 0))

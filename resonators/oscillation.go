@@ -15,12 +15,12 @@ const (
 	scanSteps = 350
 )
 
-// equivalent is the oscillator that an impedance is near its resonance.
-type equivalent struct {
-	oscillator acoustics.Oscillator
-	mass       float64 // ½·dX/dω, in the impedance's unit times s
-	stiffness  float64 // ω0²·mass
-	resistance float64
+// Equivalent is the mass, spring and resistance that an absorber is near its
+// resonance: per face area for wide kinds (kg/m², N/m³, Pa·s/m), acoustic for
+// necks (kg/m⁴, Pa/m³, Pa·s/m³).
+type Equivalent struct {
+	Oscillator                  acoustics.Oscillator
+	Mass, Stiffness, Resistance float64
 }
 
 // resonance returns the lowest frequency between 5 Hz and 5 kHz at which the
@@ -62,37 +62,36 @@ func crossing(f func(float64) float64, lo, hi float64) float64 {
 	return 0.5 * (lo + hi)
 }
 
-// equivalentOf returns the oscillator of the face, its mass, stiffness and
-// resistance those of the specific impedance (over ρc),
+// EquivalentOf returns the oscillator that the absorber's face is at its
+// resonance,
 //
 //	Q = (ω0/2R)·dX/dω,  ζ = 1/(2Q),  δ = ζ·ω0
 //	M = ½·dX/dω,  K = ω0²·M
 //
-// at the frequency where X = 0; false where the absorber is broadband.
-func equivalentOf(a Absorber, air acoustics.Air) (equivalent, bool) {
+// at the frequency where X = 0, and false where it is broadband. size is that
+// of one unit, m. A neck box counts with its outer end correction.
+func EquivalentOf(a Absorber, air acoustics.Air, size [2]float64) (Equivalent, bool) {
+	a = fitted(a, size)
 	f0, ok := resonance(a, air)
 	if !ok {
-		return equivalent{}, false
+		return Equivalent{}, false
 	}
 	const h = 1e-4 // relative; the difference is right to h²
 	w0 := 2 * math.Pi * f0
 	slope := imag(a.Specific(complex(w0*(1+h), 0), air)-a.Specific(complex(w0*(1-h), 0), air)) / (2 * h * w0)
 	r := real(a.Specific(complex(w0, 0), air))
-	e := equivalent{
-		mass:       slope / 2,
-		stiffness:  sq(w0) * slope / 2,
-		resistance: r,
+	// From the specific impedance to that of the face, or of the mouth.
+	scale := air.Density * air.SpeedOfSound
+	if n, isNeck := a.(Neck); isNeck {
+		scale /= n.Front[0] * n.Front[1]
 	}
-	// ζ = R/(ω0·dX/dω), so δ = R/(dX/dω), without dividing by R.
-	e.oscillator = acoustics.Oscillator{Natural: f0, Decay: r / slope}
-	return e, true
-}
-
-// Oscillator returns the absorber as a damped oscillator, and false where it is
-// broadband. size is that of one unit, m.
-func Oscillator(a Absorber, air acoustics.Air, size [2]float64) (acoustics.Oscillator, bool) {
-	e, ok := equivalentOf(fitted(a, size), air)
-	return e.oscillator, ok
+	return Equivalent{
+		// ζ = R/(ω0·dX/dω), so δ = R/(dX/dω), without dividing by R.
+		Oscillator: acoustics.Oscillator{Natural: f0, Decay: r / slope},
+		Mass:       slope / 2 * scale,
+		Stiffness:  sq(w0) * slope / 2 * scale,
+		Resistance: r * scale,
+	}, true
 }
 
 // bandOfAction returns the band f0·(√(1+ζ²) ∓ ζ) in Hz: where a simple

@@ -35,58 +35,80 @@ var (
 // deepest is how often an interval is halved at most.
 const deepest = 14
 
+// integrator works out means over one interval.
+type integrator struct {
+	f         func(x float64) sample
+	whole     float64 // the interval's length
+	tolerance float64 // of the mean over all of it
+}
+
 // mean returns the means of the two values over lo…hi, each to about tol, from
-// the given number of equal panels on. A panel is halved while the two rules
-// disagree or while a resonance stands between two of its points that both see
-// it from farther than a half width, so that a narrow peak is not stepped over.
+// the given number of equal panels on. A panel is halved while its share of the
+// disagreement of the two rules exceeds tol (the better rule is then right to
+// much less), or while a resonance that could matter stands between two of its
+// points, both of them far out on its flanks, so that a narrow peak is not
+// stepped over.
 func mean(lo, hi float64, panels int, tol float64, f func(x float64) sample) [2]float64 {
-	var sum [2]float64
-	width := (hi - lo) / float64(panels)
-	left := f(lo).detuning
+	var (
+		in    = integrator{f: f, whole: hi - lo, tolerance: tol}
+		width = (hi - lo) / float64(panels)
+		left  = f(lo).detuning
+		sum   [2]float64
+	)
 	for i := range panels {
 		a := lo + float64(i)*width
 		right := f(a + width).detuning
-		m := panelMean(a, a+width, left, right, tol, 0, f)
-		sum[0] += m[0]
-		sum[1] += m[1]
+		p := in.panel(a, a+width, left, right, 0)
+		sum[0] += p[0]
+		sum[1] += p[1]
 		left = right
 	}
-	return [2]float64{sum[0] / float64(panels), sum[1] / float64(panels)}
+	return [2]float64{sum[0] / in.whole, sum[1] / in.whole}
 }
 
-func panelMean(lo, hi, left, right, tol float64, depth int, f func(float64) sample) [2]float64 {
+// panel returns the integrals over lo…hi; left and right are the detunings at
+// its ends.
+func (in integrator) panel(lo, hi, left, right float64, depth int) [2]float64 {
 	var (
 		kronrod, gauss [2]float64
 		mid, half      = 0.5 * (lo + hi), 0.5 * (hi - lo)
-		before         = left
+		before, at     = left, lo
+		centre         float64
 		skipped        bool
 	)
 	for i := range 15 {
 		j := min(i, 14-i)
-		x := kronrodNodes[j] * half
+		x := mid + kronrodNodes[j]*half
 		if i < 7 {
-			x = -x
+			x = mid - kronrodNodes[j]*half
 		}
-		s := f(mid + x)
+		s := in.f(x)
 		for v := range 2 {
-			kronrod[v] += 0.5 * kronrodWeights[j] * s.value[v]
+			kronrod[v] += half * kronrodWeights[j] * s.value[v]
 			if j%2 == 1 {
-				gauss[v] += 0.5 * gaussWeights[j/2] * s.value[v]
+				gauss[v] += half * gaussWeights[j/2] * s.value[v]
 			}
 		}
-		skipped = skipped || steppedOver(before, s.detuning)
-		before = s.detuning
+		skipped = skipped || in.steppedOver(x-at, before, s.detuning)
+		before, at = s.detuning, x
+		if i == 7 {
+			centre = s.detuning
+		}
 	}
-	skipped = skipped || steppedOver(before, right)
-	differ := max(math.Abs(kronrod[0]-gauss[0]), math.Abs(kronrod[1]-gauss[1])) > tol
-	if depth == deepest || !differ && !skipped {
+	skipped = skipped || in.steppedOver(hi-at, before, right)
+	differ := max(math.Abs(kronrod[0]-gauss[0]), math.Abs(kronrod[1]-gauss[1]))
+	if depth == deepest || differ <= in.tolerance*in.whole && !skipped {
 		return kronrod
 	}
-	centre := f(mid).detuning
-	a := panelMean(lo, mid, left, centre, tol, depth+1, f)
-	b := panelMean(mid, hi, centre, right, tol, depth+1, f)
-	return [2]float64{0.5 * (a[0] + b[0]), 0.5 * (a[1] + b[1])}
+	a := in.panel(lo, mid, left, centre, depth+1)
+	b := in.panel(mid, hi, centre, right, depth+1)
+	return [2]float64{a[0] + b[0], a[1] + b[1]}
 }
 
-// steppedOver reports whether a resonance lies between two points unseen.
-func steppedOver(a, b float64) bool { return a < -1 && b > 1 }
+// steppedOver reports whether a resonance lies unseen between two points that
+// are step apart and have the detunings a and b, and might add more than the
+// tolerance. Its half width is about step/(b−a) and its peak at most 2, so its
+// area is at most 2π·step/(b−a).
+func (in integrator) steppedOver(step, a, b float64) bool {
+	return a < -1 && b > 1 && 2*math.Pi*step > in.tolerance*in.whole*(b-a)
+}

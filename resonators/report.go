@@ -42,18 +42,11 @@ func AnalyseWithin(a Absorber, air acoustics.Air, size [2]float64, limit float64
 	}
 	a = fitted(a, size)
 	var r Report
-	if e, ok := equivalentOf(a, air); ok {
-		o := e.oscillator
+	if e, ok := EquivalentOf(a, air, size); ok {
+		o := e.Oscillator
 		r.Oscillator = &o
 		r.Band = bandOfAction(o)
-		// From the specific impedance to that of the face, or of the mouth.
-		scale := air.Density * air.SpeedOfSound
-		if n, isNeck := a.(Neck); isNeck {
-			scale /= n.Front[0] * n.Front[1]
-		}
-		r.Mass = e.mass * scale
-		r.Stiffness = e.stiffness * scale
-		r.Resistance = e.resistance * scale
+		r.Mass, r.Stiffness, r.Resistance = e.Mass, e.Stiffness, e.Resistance
 	}
 	r.ThirdOctaves = thirdOctaves(a, air, limit)
 	r.Practical, r.AlphaW, r.AlphaWShape = rate(r.ThirdOctaves)

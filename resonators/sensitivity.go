@@ -150,8 +150,8 @@ func Sensitivities(a Absorber, air acoustics.Air, size [2]float64) []Sensitivity
 		if lo < 0 {
 			lo = d.value
 		}
-		below, okLo := equivalentOf(followFill(d.with(lo), a), air)
-		above, okHi := equivalentOf(followFill(d.with(hi), a), air)
+		below, okLo := EquivalentOf(followFill(d.with(lo), a), air, size)
+		above, okHi := EquivalentOf(followFill(d.with(hi), a), air, size)
 		if !okLo || !okHi {
 			continue
 		}
@@ -159,8 +159,8 @@ func Sensitivities(a Absorber, air acoustics.Air, size [2]float64) []Sensitivity
 			Dimension: d.name,
 			Value:     d.value,
 			Step:      d.step,
-			F0PerStep: (above.oscillator.Natural - below.oscillator.Natural) / (hi - lo) * d.step,
-			QPerStep:  (above.oscillator.Q() - below.oscillator.Q()) / (hi - lo) * d.step,
+			F0PerStep: (above.Oscillator.Natural - below.Oscillator.Natural) / (hi - lo) * d.step,
+			QPerStep:  (above.Oscillator.Q() - below.Oscillator.Q()) / (hi - lo) * d.step,
 		})
 	}
 	return out
