@@ -1,0 +1,228 @@
+package acoustics
+
+import (
+	"context"
+	"math"
+	"math/cmplx"
+	"runtime"
+	"sync"
+)
+
+// rectangle is a contour in the plane of ω: Re from left to right, Im from low
+// to high, rad/s.
+type rectangle struct{ left, right, low, high float64 }
+
+func (e rectangle) holds(w complex128) bool {
+	return real(w) > e.left && real(w) < e.right && imag(w) > e.low && imag(w) < e.high
+}
+
+// contour returns the rectangle that is counted in. Its right edge is moved,
+// within a hundredth, to where no known zero or pole is near.
+func (f *Field) contour(upTo float64, paths []path) rectangle {
+	e := rectangle{
+		left: math.Pi * f.room.lowestHz(),
+		low:  -0.05, // δ is never below 0: no zero lies near this edge
+		high: 3 * math.Ln10 / shortestT60,
+	}
+	best := -1.0
+	for i := range 21 {
+		right := 2 * math.Pi * upTo * (0.99 + 0.001*float64(i))
+		near := math.Inf(1)
+		for _, a := range paths {
+			if a.found {
+				near = math.Min(near, math.Abs(real(a.root)-right))
+			}
+			if a.mode >= 0 {
+				near = math.Min(near, math.Abs(real(f.bareRoot(a.mode))-right))
+			}
+		}
+		if near > best {
+			best, e.right = near, right
+		}
+	}
+	return e
+}
+
+// inside returns how many found roots of the determinant lie in a contour.
+func inside(paths []path, e rectangle) int {
+	n := 0
+	for _, a := range paths {
+		if a.found && e.holds(a.root) {
+			n++
+		}
+	}
+	return n
+}
+
+// count returns how many poles the treated room has inside a contour: the zeros
+// of the determinant by the argument principle, each bare mode that units touch
+// being a pole of it, and the modes that none touches.
+func (f *Field) count(ctx context.Context, e rectangle) (int, error) {
+	n := 0
+	for i := range f.modes.damped {
+		if e.holds(f.bareRoot(i)) {
+			n++
+		}
+	}
+	if len(f.units) == 0 {
+		return n, nil
+	}
+	corners := []complex128{complex(e.left, e.low), complex(e.right, e.low), complex(e.right, e.high), complex(e.left, e.high)}
+	// Each edge is cut into pieces of about this length, then refined.
+	const piece = 2 * math.Pi * 2 // rad/s
+	var ends [][2]complex128
+	for i, a := range corners {
+		b := corners[(i+1)%4]
+		pieces := int(math.Ceil(cmplx.Abs(b-a) / piece))
+		for j := range pieces {
+			ends = append(ends, [2]complex128{
+				a + (b-a)*complex(float64(j)/float64(pieces), 0),
+				a + (b-a)*complex(float64(j+1)/float64(pieces), 0)})
+		}
+	}
+	turns := make([]float64, len(ends))
+	workers := runtime.GOMAXPROCS(0)
+	var group sync.WaitGroup
+	for w := range workers {
+		group.Go(func() {
+			d := f.newFollower()
+			for i := w; i < len(ends) && ctx.Err() == nil; i += workers {
+				a, b := ends[i][0], ends[i][1]
+				turns[i] = d.turn(a, b, d.phase(a), d.phase(b), 14)
+			}
+		})
+	}
+	group.Wait()
+	var sum float64
+	for _, t := range turns {
+		sum += t
+	}
+	return n + int(math.Round(sum/(2*math.Pi))), ctx.Err()
+}
+
+// phase returns the argument of the determinant, modulo 2π.
+func (w *follower) phase(omega complex128) float64 {
+	w.matrix(omega, 1, -1)
+	w.lu.factor()
+	return imag(w.lu.logDet())
+}
+
+// turn returns how far the determinant's argument turns from a to b, cutting
+// the stretch until both halves turn little and agree with the whole.
+func (w *follower) turn(a, b complex128, pa, pb float64, depth int) float64 {
+	m := (a + b) / 2
+	pm := w.phase(m)
+	var (
+		first  = wrap(pm - pa)
+		second = wrap(pb - pm)
+		whole  = wrap(pb - pa)
+	)
+	if depth == 0 || math.Abs(first) < 0.8 && math.Abs(second) < 0.8 && math.Abs(first+second-whole) < 1e-9 {
+		return first + second
+	}
+	return w.turn(a, m, pa, pm, depth-1) + w.turn(m, b, pm, pb, depth-1)
+}
+
+// wrap brings an angle to −π…π.
+func wrap(x float64) float64 { return x - 2*math.Pi*math.Round(x/(2*math.Pi)) }
+
+// recover looks for the zeros that the count says are missing, by Newton's
+// method on the determinant with the known zeros divided out and the bare
+// modes' poles multiplied in, from starts at the bare modes, the units'
+// resonances and between.
+func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted int) ([]path, error) {
+	w := f.newFollower()
+	var starts []complex128
+	for i := range paths {
+		if !paths[i].found {
+			starts = append(starts, f.startOf(paths[i]))
+		}
+	}
+	for hz := e.left / (2 * math.Pi); hz < e.right/(2*math.Pi); hz += 3 {
+		for _, d := range []float64{5, 20, 60, 150, 300} {
+			starts = append(starts, complex(2*math.Pi*hz, d))
+		}
+	}
+	for _, s := range starts {
+		if inside(paths, e) >= counted {
+			break
+		}
+		if err := ctx.Err(); err != nil {
+			return paths, err
+		}
+		root, ok := w.deflated(s, paths, e)
+		if ok && e.holds(root) {
+			paths = f.adopt(paths, root)
+		}
+	}
+	return paths, nil
+}
+
+// startOf returns where a lost path began.
+func (f *Field) startOf(a path) complex128 {
+	if a.mode >= 0 {
+		return f.bareRoot(a.mode) * complex(1.0003, 0.0002)
+	}
+	return complex(2*math.Pi*f.units[a.unit].Natural, 10)
+}
+
+// adopt gives a root to the lost path that began nearest, else to the unit that
+// resonates nearest.
+func (f *Field) adopt(paths []path, root complex128) []path {
+	best, at := math.Inf(1), -1
+	for i, a := range paths {
+		if a.found || a.mode >= 0 && !f.touched(a.mode) {
+			continue
+		}
+		if d := cmplx.Abs(f.startOf(a) - root); d < best {
+			best, at = d, i
+		}
+	}
+	if at >= 0 {
+		paths[at].root, paths[at].found = root, true
+		return paths
+	}
+	near := 0
+	for u := range f.units {
+		if math.Abs(f.units[u].Natural-real(root)/(2*math.Pi)) < math.Abs(f.units[near].Natural-real(root)/(2*math.Pi)) {
+			near = u
+		}
+	}
+	return append(paths, path{mode: -1, unit: near, root: root, found: true})
+}
+
+// deflated runs Newton's method on the determinant with known zeros and poles
+// taken out.
+func (w *follower) deflated(x complex128, paths []path, e rectangle) (complex128, bool) {
+	f := w.f
+	for range 40 {
+		h := x * 1e-6
+		w.matrix(x+h, 1, -1)
+		w.lu.factor()
+		up := w.lu.logDet()
+		w.matrix(x-h, 1, -1)
+		w.lu.factor()
+		d := up - w.lu.logDet()
+		d = complex(real(d), wrap(imag(d))) / (2 * h)
+		for _, a := range paths {
+			if a.found && (a.mode < 0 || f.touched(a.mode)) {
+				d -= 1 / (x - a.root)
+			}
+			if a.mode >= 0 && f.touched(a.mode) {
+				d += 1 / (x - f.bareRoot(a.mode))
+			}
+		}
+		step := 1 / d
+		if limit := 0.05 * cmplx.Abs(x); cmplx.Abs(step) > limit {
+			step *= complex(limit/cmplx.Abs(step), 0)
+		}
+		x -= step
+		if cmplx.IsNaN(x) || real(x) < 0.5*e.left || real(x) > 1.2*e.right || imag(x) > 2*e.high || imag(x) < -e.high {
+			return 0, false
+		}
+		if cmplx.Abs(step) < 1e-10*cmplx.Abs(x) {
+			return x, true
+		}
+	}
+	return 0, false
+}

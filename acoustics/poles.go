@@ -1,0 +1,258 @@
+package acoustics
+
+import (
+	"context"
+	"math"
+	"math/cmplx"
+	"runtime"
+	"sync"
+)
+
+// Pole is one damped oscillation of the treated room.
+type Pole struct {
+	Oscillator           // natural frequency |ω|/2π and decay Im ω
+	LevelDB    []float64 // per seat: 20 log10(4π·|residue|/Im ω); NaN for nothing
+}
+
+// Poles are those of the treated room below the limit asked for, T60 ≥ 0.02 s.
+type Poles struct {
+	// Modes[i] is the pole that the bare mode i became by continuation from
+	// weak coupling, nil where it is no longer listed; in the order of
+	// Room.Modes(upTo).
+	Modes []*Pole
+	// Absorbers are those that grew from units' own resonances.
+	Absorbers []AbsorberPole
+	// Counted is the number of poles the argument principle finds inside the
+	// contour, Found those that were followed there; equal when none is lost.
+	// The contour is the rectangle of Re ω/2π from half the lowest mode's
+	// frequency to the limit asked for, Im ω from just below 0 to that of
+	// T60 = 0.02 s.
+	Counted, Found int
+}
+
+// AbsorberPole is a pole that grew from the resonance of a unit.
+type AbsorberPole struct {
+	Pole
+	Owner int
+}
+
+const (
+	// shortestT60 is the decay in s below which a pole is not listed.
+	shortestT60 = 0.02
+	// untouched is the greatest |û| at the units of a mode that none touches.
+	untouched = 1e-9
+	// followAbove is how far above the limit modes and units are followed, since
+	// their poles may come down into it.
+	followAbove = 1.15
+)
+
+// path is one oscillation followed from weak coupling to the room as it is.
+type path struct {
+	mode  int // index in the field's modes, −1 for a unit's
+	unit  int // index of the unit, −1 for a mode's
+	root  complex128
+	found bool
+}
+
+// Poles returns the complex frequencies at which the treated room rings by
+// itself, up to a frequency in Hz that is within the field's limit: the zeros of
+//
+//	det(Z(ω) + jωρ·G(ω)),
+//
+// with the modes that no unit touches as they are. Each is followed from weak
+// coupling: at s = 0 the units stand alone, each with the air mass that the room
+// puts before it, and everything else between units and room is scaled by s from
+// 0 to 1. What the argument principle counts beyond that is looked for by
+// Newton's method with the known zeros divided out. progress, where not nil, is
+// told how many of how many paths are done. It returns the error of ctx.
+func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, total int)) (Poles, error) {
+	paths := f.starts(upTo)
+	if err := f.followAll(ctx, paths, progress); err != nil {
+		return Poles{}, err
+	}
+	dropTwins(paths)
+	edge := f.contour(upTo, paths)
+	counted, err := f.count(ctx, edge)
+	if err != nil {
+		return Poles{}, err
+	}
+	if inside(paths, edge) < counted {
+		if paths, err = f.recover(ctx, paths, edge, counted); err != nil {
+			return Poles{}, err
+		}
+	}
+	return f.listed(ctx, paths, upTo, edge, counted)
+}
+
+// starts lists the modes and units that are followed.
+func (f *Field) starts(upTo float64) []path {
+	var paths []path
+	for i, m := range f.modes.damped {
+		if m.Hz > followAbove*upTo {
+			break
+		}
+		paths = append(paths, path{mode: i, unit: -1})
+	}
+	for u, unit := range f.units {
+		if unit.Natural > 0 && unit.Natural <= 1.5*followAbove*upTo {
+			paths = append(paths, path{mode: -1, unit: u})
+		}
+	}
+	return paths
+}
+
+// followAll follows every path, each worker with room of its own.
+func (f *Field) followAll(ctx context.Context, paths []path, progress func(done, total int)) error {
+	var (
+		group sync.WaitGroup
+		next  = make(chan int)
+		mutex sync.Mutex
+		done  int
+	)
+	for range runtime.GOMAXPROCS(0) {
+		group.Go(func() {
+			w := f.newFollower()
+			for i := range next {
+				w.follow(ctx, &paths[i])
+				if progress != nil {
+					mutex.Lock()
+					done++
+					progress(done, len(paths))
+					mutex.Unlock()
+				}
+			}
+		})
+	}
+	for i := range paths {
+		if ctx.Err() != nil {
+			break
+		}
+		next <- i
+	}
+	close(next)
+	group.Wait()
+	return ctx.Err()
+}
+
+// bareRoot returns the complex frequency of a bare mode.
+func (f *Field) bareRoot(i int) complex128 {
+	m := &f.modes
+	c := f.room.Air.SpeedOfSound
+	d := m.loss[i] * c
+	w2 := m.k2[i]*c*c - d*d
+	if w2 <= 0 {
+		return complex(0, d)
+	}
+	return complex(math.Sqrt(w2), d)
+}
+
+// touched reports whether some unit moves with a mode.
+func (f *Field) touched(i int) bool {
+	for u := range f.units {
+		if math.Abs(f.weights[u][i]) > untouched {
+			return true
+		}
+	}
+	return false
+}
+
+// sameRoot is how near two roots are, relative, that count as one.
+const sameRoot = 1e-7
+
+// dropTwins takes back those paths that ended on the root of another.
+func dropTwins(paths []path) {
+	for i := range paths {
+		for j := range i {
+			a, b := &paths[i], &paths[j]
+			if a.found && b.found && cmplx.Abs(a.root-b.root) < sameRoot*cmplx.Abs(a.root) {
+				a.found = false
+			}
+		}
+	}
+}
+
+// listed turns paths into poles with their levels.
+func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rectangle, counted int) (Poles, error) {
+	p := Poles{Counted: counted, Found: inside(paths, edge)}
+	var roots []complex128
+	for _, a := range paths {
+		if a.found {
+			roots = append(roots, a.root)
+		}
+	}
+	shown := make([]*Pole, len(paths))
+	var group sync.WaitGroup
+	workers := runtime.GOMAXPROCS(0)
+	for w := range workers {
+		group.Go(func() {
+			s := f.newScene()
+			for i := w; i < len(paths) && ctx.Err() == nil; i += workers {
+				a := paths[i]
+				if a.found && imag(a.root) <= 3*math.Ln10/shortestT60 && imag(a.root) > 0 {
+					shown[i] = &Pole{
+						Oscillator: Oscillator{Natural: cmplx.Abs(a.root) / (2 * math.Pi), Decay: imag(a.root)},
+						LevelDB:    s.residueLevels(a.root, roots),
+					}
+				}
+			}
+		})
+	}
+	group.Wait()
+	for i, a := range paths {
+		switch {
+		case a.mode >= 0 && f.modes.damped[a.mode].Hz <= upTo:
+			p.Modes = append(p.Modes, shown[i])
+		case a.mode < 0 && shown[i] != nil && shown[i].Natural <= upTo:
+			p.Absorbers = append(p.Absorbers, AbsorberPole{Pole: *shown[i], Owner: f.units[a.unit].Owner})
+		}
+	}
+	sortPoles(p.Absorbers)
+	return p, ctx.Err()
+}
+
+// sortPoles puts absorbers' poles in order of frequency.
+func sortPoles(p []AbsorberPole) {
+	for i := range p {
+		for j := i; j > 0 && p[j].Natural < p[j-1].Natural; j-- {
+			p[j], p[j-1] = p[j-1], p[j]
+		}
+	}
+}
+
+// circlePoints is how many points the residue's contour has: the trapezoidal
+// rule on a circle of a third of the way to the next pole leaves 3^-16.
+const circlePoints = 16
+
+// residueLevels returns the level of a pole's own peak at each seat, its
+// residue by Cauchy's integral on a circle round it that holds no other pole.
+func (s *scene) residueLevels(root complex128, roots []complex128) []float64 {
+	f := s.t.f
+	radius := 0.2 * cmplx.Abs(root)
+	for _, r := range roots {
+		if d := cmplx.Abs(r - root); d > 0 {
+			radius = math.Min(radius, d/3)
+		}
+	}
+	var (
+		level   = make([]float64, len(f.seats))
+		residue = make([]complex128, len(f.seats))
+		whole   = make([]float64, len(f.seats))
+	)
+	for i := range circlePoints {
+		turn := cmplx.Rect(1, 2*math.Pi*(float64(i)+0.5)/circlePoints)
+		s.at(root + complex(radius, 0)*turn)
+		for e, p := range s.treated {
+			residue[e] += p * turn * complex(radius/circlePoints, 0)
+			whole[e] = math.Max(whole[e], cmplx.Abs(p)*radius)
+		}
+	}
+	for e := range level {
+		// Rounding leaves this much of what the circle's points add up to.
+		if cmplx.Abs(residue[e]) < 1e-9*whole[e] {
+			level[e] = math.NaN()
+			continue
+		}
+		level[e] = 20 * math.Log10(4*math.Pi*cmplx.Abs(residue[e])/imag(root))
+	}
+	return level
+}

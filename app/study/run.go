@@ -1,0 +1,144 @@
+package study
+
+import (
+	"context"
+	"math"
+
+	"stillroom/acoustics"
+	"stillroom/app/project"
+)
+
+// withDefaults fills the zero fields of o with their documented defaults.
+func (o Options) withDefaults() Options {
+	if o.FromHz == 0 {
+		o.FromHz = 16
+	}
+	if o.ToHz == 0 {
+		o.ToHz = 250
+	}
+	if o.Points == 0 {
+		o.Points = 200
+	}
+	if o.ModesToHz == 0 {
+		o.ModesToHz = 200
+	}
+	return o
+}
+
+// Run computes a project. Stages whose inputs are those of former, which may
+// be nil, are taken over from it. After each stage progress, where not nil, is
+// given what is there so far; it must not block. The error is that of ctx, or
+// says what of the project cannot be computed.
+//
+// Run is a pure function: the result does not depend on former.
+func Run(ctx context.Context, p project.Project, o Options, former *Result, progress func(*Result)) (*Result, error) {
+	o = o.withDefaults()
+	var past stages
+	if former != nil {
+		past = former.stages
+	}
+	if progress == nil {
+		progress = func(*Result) {}
+	}
+
+	shell, err := shellStage(p, o, past.shell)
+	if err != nil {
+		return nil, err
+	}
+	kit := kitStage(p, shell.room.Air, past.kit)
+	if err := ctx.Err(); err != nil {
+		return nil, err
+	}
+	field, err := fieldStage(ctx, p, o, shell, kit, past.field)
+	if err != nil {
+		return nil, err
+	}
+
+	r := newResult(p, o, shell, kit, field)
+	r.rate(shell.limit)
+	r.assign(kit.units)
+	r.Stage = StageLevel
+	r.find()
+	r.stages = stages{shell: shell, kit: kit, field: field, poles: past.poles}
+	progress(r.copied())
+
+	poles, err := polesStage(ctx, o, field, past.poles)
+	if err != nil {
+		return nil, err
+	}
+	r = r.copied()
+	r.stages.poles = poles
+	r.takePoles(poles.poles)
+	r.Stage = StageTreated
+	r.find()
+	return r, nil
+}
+
+// Frequencies returns n ≥ 2 log-spaced frequencies from lo to hi, both included exactly.
+func Frequencies(lo, hi float64, n int) []float64 {
+	hz := make([]float64, n)
+	for i := range hz {
+		hz[i] = lo * math.Pow(hi/lo, float64(i)/float64(n-1))
+	}
+	hz[0], hz[n-1] = lo, hi
+	return hz
+}
+
+// newResult gathers the stages up to the treated level.
+func newResult(p project.Project, o Options, shell *shellPart, kit *kitPart, field *fieldPart) *Result {
+	r := &Result{
+		Project:     p,
+		Options:     o,
+		Air:         shell.room.Air,
+		Room:        shell.room,
+		VolumeM3:    shell.room.Box.Volume(),
+		AreaM2:      shell.room.Box.SurfaceArea(),
+		SchroederHz: shell.schroeder,
+		Bands:       shell.bands,
+		Levels:      Levels{Hz: field.hz, Bare: field.levels.Bare, Treated: field.levels.Treated},
+		Absorbers:   append([]AbsorberRow(nil), kit.rows...),
+	}
+	r.Modes = make([]ModeRow, len(shell.modes))
+	for i, m := range shell.modes {
+		osc := m.Oscillator()
+		r.Modes[i] = ModeRow{
+			Mode:       m,
+			Oscillator: osc,
+			Wavelength: r.Air.SpeedOfSound / m.Hz,
+			LevelDB:    field.modeLevels[i],
+			LimitS:     shell.limit.Seconds(m.Hz),
+			Strongest:  strongest(m.Order),
+		}
+	}
+	return r
+}
+
+// copied returns a shallow copy whose mode and absorber rows may be written to.
+func (r *Result) copied() *Result {
+	c := *r
+	c.Modes = append([]ModeRow(nil), r.Modes...)
+	c.Absorbers = append([]AbsorberRow(nil), r.Absorbers...)
+	return &c
+}
+
+// takePoles sets what became of each mode and the absorbers' own poles.
+func (r *Result) takePoles(poles acoustics.Poles) {
+	limit := limitCurve(r.Project.Limits)
+	row := func(p acoustics.Pole, absorber int) PoleRow {
+		return PoleRow{Oscillator: p.Oscillator, LevelDB: p.LevelDB, Absorber: absorber, LimitS: limit.Seconds(p.Natural)}
+	}
+	r.PolesCounted, r.PolesFound = poles.Counted, poles.Found
+	if len(r.Absorbers) == 0 {
+		return
+	}
+	for i := range r.Modes {
+		if i < len(poles.Modes) && poles.Modes[i] != nil {
+			r.Modes[i].Treated = []PoleRow{row(*poles.Modes[i], -1)}
+		}
+	}
+	r.AbsorberPoles = make([]PoleRow, len(poles.Absorbers))
+	for i, p := range poles.Absorbers {
+		r.AbsorberPoles[i] = row(p.Pole, p.Owner)
+	}
+	r.pair()
+}

@@ -1,0 +1,164 @@
+package tuning
+
+import (
+	"math"
+
+	"stillroom/acoustics"
+	"stillroom/resonators"
+)
+
+// Goal is what an absorber is tuned for.
+type Goal int
+
+// The two goals.
+const (
+	FastestDecay Goal = iota // both poles of the pair decay as fast as can be
+	LowPeak                  // the lowest response to a loudspeaker
+)
+
+// Occupied is a rectangle of a surface that is taken: another absorber, a door,
+// a window.
+type Occupied struct {
+	Surface      acoustics.Surface
+	Centre, Size [2]float64 // m
+	Depth        float64    // m into the room; 0 for what is flush
+}
+
+// Problem is one mode and what may be done about it.
+type Problem struct {
+	Mode  acoustics.DampedMode
+	Box   acoustics.Box
+	Air   acoustics.Air
+	Kinds []string // of Kinds(); none: all of them
+	// Surfaces that may be built on; none: all six.
+	Surfaces []acoustics.Surface
+	Depth    float64 // how far the absorber may stand out from its surface, m
+	Occupied []Occupied
+	// TargetT60 is the decay time asked for, s; 0: half of the mode's own.
+	TargetT60 float64
+	Goal      Goal
+	// Stock is what may be built from; nil: CommonStock.
+	Stock *Stock
+	// NaturalInRoom, where not nil, gives the natural frequency in Hz that the
+	// absorber has at its spot in the room, with the air mass that the room puts
+	// before it; false: by the absorber's own reckoning.
+	NaturalInRoom func(a resonators.Absorber, at resonators.Placement) (hz float64, ok bool)
+	// Most is how many candidates are wanted; 0: 12.
+	Most int
+}
+
+// Kinds returns the kinds of absorber that are proposed.
+func Kinds() []string { return []string{"neck", "panel"} }
+
+// Candidate is one absorber that can be built, at the spot it goes to.
+type Candidate struct {
+	Absorber resonators.Absorber
+	At       resonators.Placement
+	Depth    float64 // m from the surface
+	Build    Build
+
+	Strength float64 // û, root mean square of the mode over the units
+	Coupling float64 // μ of all units
+	// What the target asks for at this spot: coupling, and the total volume of
+	// boxes (m³) or area of panel (m²) that gives it; the other is 0.
+	LeastCoupling, LeastVolume, LeastArea float64
+
+	WantedHz      float64 // where the goal wants the resonance
+	Oscillator    acoustics.Oscillator
+	WantedDamping float64 // the goal's ζ_a
+	// Pair is what mode and absorber become, slowest decay first.
+	Pair [2]acoustics.Oscillator
+	// Meets reports whether both of the pair decay within the target.
+	Meets bool
+	// Tolerances of each dimension.
+	Tolerances []Tolerance
+}
+
+// Build holds what a joiner needs beside the absorber's acoustic values.
+type Build struct {
+	// A neck box: its outside (width, height along the surface, depth), the
+	// board's thickness and the tube. The neck runs inwards from the front.
+	Outside [3]float64 // m
+	Board   float64    // m
+	Tube    Tube
+	// A panel's sheet.
+	Sheet Sheet
+}
+
+// Tolerance is a dimension's pull on the resonance, and how far it may be off
+// while f0 moves by no more than half of the half-power width of the pair's
+// slower pole.
+type Tolerance struct {
+	resonators.Sensitivity
+	Allowed float64 // ±, SI
+}
+
+// target returns the T60 asked for, s.
+func (p Problem) target() float64 {
+	if p.TargetT60 > 0 {
+		return p.TargetT60
+	}
+	return p.Mode.Oscillator().T60() / 2
+}
+
+// needed returns the least coupling ratio for the target.
+func (p Problem) needed() float64 {
+	o := p.Mode.Oscillator()
+	return NeededCoupling(o.DampingRatio(), DampingFor(o.Natural, p.target()))
+}
+
+// wanted returns where the goal wants an absorber of the coupling ratio mu, Hz,
+// and with which damping ratio.
+func (p Problem) wanted(mu float64) (hz, damping float64) {
+	o := p.Mode.Oscillator()
+	if p.Goal == LowPeak {
+		tuning, damping, _ := LowestPeak(mu)
+		return o.Natural * tuning, damping
+	}
+	return o.Natural, FastestDamping(o.DampingRatio(), mu)
+}
+
+// natural returns the absorber's natural frequency at its spot, Hz; 0 where
+// there is none.
+func (p Problem) natural(a resonators.Absorber, at resonators.Placement) float64 {
+	if p.NaturalInRoom != nil {
+		if hz, ok := p.NaturalInRoom(a, at); ok {
+			return hz
+		}
+	}
+	e, ok := resonators.EquivalentOf(a, p.Air, at.Size)
+	if !ok {
+		return 0
+	}
+	return e.Oscillator.Natural
+}
+
+// settle fills in what follows from a candidate's absorber and place.
+func (p Problem) settle(c Candidate) (Candidate, bool) {
+	e, ok := resonators.EquivalentOf(c.Absorber, p.Air, c.At.Size)
+	if !ok {
+		return c, false
+	}
+	squared := squaredStrength(p.Box, p.Mode.Mode, c.At)
+	volume, norm := p.Box.Volume(), p.Mode.Norm
+	mass := e.Mass // acoustic, of one unit
+	if _, neck := c.Absorber.(resonators.Neck); !neck {
+		mass /= c.At.Size[0] * c.At.Size[1]
+	}
+	c.Strength = math.Sqrt(squared / float64(c.At.Units))
+	c.Coupling = Coupling(squared, norm, volume, mass, e.Oscillator.Natural, p.Air)
+	c.LeastCoupling = p.needed()
+	c.WantedHz, c.WantedDamping = p.wanted(c.Coupling)
+	c.Oscillator = e.Oscillator
+	c.Oscillator.Natural = p.natural(c.Absorber, c.At)
+	c.Pair = Pair(p.Mode.Oscillator(), c.Oscillator, c.Coupling)
+	c.Meets = c.Pair[0].T60() <= p.target()
+	mean := squared / float64(c.At.Units)
+	switch a := c.Absorber.(type) {
+	case resonators.Neck:
+		c.LeastVolume = BoxVolume(c.LeastCoupling, mean, norm, volume)
+	case resonators.Panel:
+		c.LeastArea = PanelArea(c.LeastCoupling, mean, norm, volume, a.Mass, e.Oscillator.Natural, p.Air)
+	}
+	return c, true
+}
