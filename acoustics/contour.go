@@ -192,18 +192,11 @@ func (f *Field) adopt(paths []path, root complex128) []path {
 }
 
 // deflated runs Newton's method on the determinant with known zeros and poles
-// taken out.
+// taken out, its logarithmic derivative by Jacobi's formula tr(A^-1·A′).
 func (w *follower) deflated(x complex128, paths []path, e rectangle) (complex128, bool) {
 	f := w.f
 	for range 40 {
-		h := x * 1e-6
-		w.matrix(x+h, 1, -1)
-		w.lu.factor()
-		up := w.lu.logDet()
-		w.matrix(x-h, 1, -1)
-		w.lu.factor()
-		d := up - w.lu.logDet()
-		d = complex(real(d), wrap(imag(d))) / (2 * h)
+		d := w.logDerivative(x)
 		for _, a := range paths {
 			if a.found && (a.mode < 0 || f.touched(a.mode)) {
 				d -= 1 / (x - a.root)
@@ -220,9 +213,32 @@ func (w *follower) deflated(x complex128, paths []path, e rectangle) (complex128
 		if cmplx.IsNaN(x) || real(x) < 0.5*e.left || real(x) > 1.2*e.right || imag(x) > 2*e.high || imag(x) < -e.high {
 			return 0, false
 		}
-		if cmplx.Abs(step) < 1e-10*cmplx.Abs(x) {
+		if cmplx.Abs(step) < 1e-11*cmplx.Abs(x) {
 			return x, true
 		}
 	}
 	return 0, false
+}
+
+// logDerivative returns d log det A/dω, A′ by central difference.
+func (w *follower) logDerivative(x complex128) complex128 {
+	r := w.lu.n
+	h := x * 1e-6
+	w.matrix(x+h, 1, -1)
+	slope := append([]complex128(nil), w.lu.a...)
+	w.matrix(x-h, 1, -1)
+	for i, v := range w.lu.a {
+		slope[i] = (slope[i] - v) / (2 * h)
+	}
+	w.matrix(x, 1, -1)
+	w.lu.factor()
+	var trace complex128
+	for j := range r {
+		for i := range r {
+			w.rhs[i] = slope[i*r+j]
+		}
+		w.lu.solve(w.rhs)
+		trace += w.rhs[j]
+	}
+	return trace
 }

@@ -8,7 +8,7 @@ import (
 
 // Sensitivity is how far the resonance moves with one dimension.
 type Sensitivity struct {
-	// Dimension is the field's name ("Cavity", "Fill.Thickness", "Size[0]").
+	// Dimension is the field's name ("Cavity", "Fill.Thickness", "Size[0]"; a neck box's "Volume").
 	Dimension string
 	Value     float64 // SI
 	Step      float64 // SI: what one step is
@@ -82,7 +82,7 @@ func dimensions(a Absorber) []dimension {
 
 func neckDimensions(n Neck) []dimension {
 	d := []dimension{
-		{"Cavity", litre, n.Cavity, func(x float64) Absorber { n := n; n.Cavity = x; return n }},
+		{"Volume", litre, n.Cavity, func(x float64) Absorber { n := n; n.Cavity = x; return n }},
 		{"MouthRadius", millimetre, n.MouthRadius, func(x float64) Absorber { n := n; n.MouthRadius = x; return n }},
 		{"Length", millimetre, n.Length, func(x float64) Absorber { n := n; n.Length = x; return n }},
 		{"Gauze", edgeStep, n.Gauze, func(x float64) Absorber { n := n; n.Gauze = x; return n }},

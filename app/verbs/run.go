@@ -214,3 +214,13 @@ func writeFile(path string, write func(io.Writer) error) (err error) {
 	}
 	return nil
 }
+
+// IsFile reports whether a word is meant as a project file: it ends like one or
+// a file of that name is there.
+func IsFile(word string) bool {
+	if strings.HasSuffix(word, project.Suffix) {
+		return true
+	}
+	info, err := os.Stat(word)
+	return err == nil && !info.IsDir()
+}

@@ -1,0 +1,177 @@
+package sheets
+
+import (
+	"fmt"
+	"strings"
+
+	"gonum.org/v1/plot/vg/draw"
+
+	"stillroom/acoustics"
+	"stillroom/app/figures"
+	"stillroom/app/project"
+	"stillroom/app/study"
+	"stillroom/app/units"
+	"stillroom/assets"
+)
+
+func fixed(v float64, places int) string { return fmt.Sprintf("%.*f", places, v) }
+
+// modeSchedule is the first sheet.
+func (s *writer) modeSchedule() {
+	s.sheet = "Mode schedule"
+	s.page()
+	r := s.r
+	s.heading("Mode schedule")
+	s.paragraph(fmt.Sprintf("Room %s × %s × %s, %s. Speed of sound %.1f m/s at %s, %.0f %% humidity. Schroeder frequency %.0f Hz. Level: each mode's own peak at seat %s, dB re one loudspeaker of unit gain in the free field at 1 m. Limits: %s.",
+		units.Length(r.Project.Room.Length, s.sys), units.Length(r.Project.Room.Width, s.sys), units.Length(r.Project.Room.Height, s.sys),
+		units.Volume(r.VolumeM3, s.sys), r.Air.SpeedOfSound, units.Temperature(r.Project.Air.TemperatureC, s.sys), r.Project.Air.RelativeHumidityPct,
+		r.SchroederHz, r.Project.Seats[0].ID, limitSource(r.Project.Limits)), textSize)
+	columns := []column{{"Mode", 6, false}, {"Hz", 6.2, true}, {"Kind", 9.5, false}, {"λ", 7.5, true}, {"T60 s", 5.6, true},
+		{"Limit s", 6.2, true}, {"Width Hz", 7.4, true}, {"dB", 5.6, true}, {"Treated: Hz, s", 12, false}, {"Pressure is greatest", 27, false}, {"No.", 4, true}, {"Absorber", 8, false}}
+	var rows [][]string
+	for _, m := range r.Modes {
+		problem := ""
+		if m.Problem {
+			problem = fmt.Sprint(m.Rank)
+		}
+		rows = append(rows, []string{orderText(m.Mode.Order), fixed(m.Mode.Hz, 1), m.Mode.Kind().String(), units.Length(m.Wavelength, s.sys),
+			fixed(m.Oscillator.T60(), 2), fixed(m.LimitS, 2), fixed(m.Oscillator.HalfPowerWidth(), 1),
+			strings.TrimSuffix(units.Decibels(m.LevelDB[0]), " dB"), poles(m), m.Strongest, problem, s.ids(m.Absorbers)})
+	}
+	s.table(columns, rows)
+	s.paragraph("λ: wavelength. Width: at half power. No.: rank as a problem, 1 the worst; a problem is a mode whose decay is over the limit and whose own peak at a seat is within 10 dB of the strongest there. Treated: the oscillations that the mode and the absorbers tuned to it have together.", textSize)
+}
+
+func orderText(o [3]int) string { return fmt.Sprintf("%d %d %d", o[0], o[1], o[2]) }
+
+func poles(m study.ModeRow) string {
+	var t []string
+	for _, p := range m.Poles() {
+		t = append(t, fmt.Sprintf("%.1f, %.2f", p.Oscillator.Natural, p.Oscillator.T60()))
+	}
+	return strings.Join(t, "; ")
+}
+
+func (s *writer) ids(absorbers []int) string {
+	var t []string
+	for _, a := range absorbers {
+		t = append(t, s.r.Absorbers[a].ID)
+	}
+	return strings.Join(t, ", ")
+}
+
+func limitSource(l project.Limits) string {
+	if n, ok := acoustics.Limit(l.Curve); ok {
+		return n.Title + ", " + n.Source
+	}
+	return "the project's own"
+}
+
+// planAndSection is the sheet of drawings and positions.
+func (s *writer) planAndSection() {
+	s.sheet = "Plan and section"
+	s.page()
+	v := figures.DefaultView(s.r)
+	v.US = s.o.US
+	height := (s.bottom() - s.y) * 0.36
+	for _, paint := range []func(draw.Canvas, *study.Result, figures.View, figures.Style){figures.DrawPlan, figures.DrawSection} {
+		c, end := on(s.doc, margin, s.y, s.w-2*margin, height)
+		paint(c, s.r, v, figures.Print())
+		end()
+		s.y += height + 4
+	}
+	s.heading("Positions, measured from the front wall, the left wall and the floor")
+	var rows [][]string
+	at := func(p acoustics.Point) []string {
+		return []string{units.Length(p[0], s.sys), units.Length(p[1], s.sys), units.Length(p[2], s.sys)}
+	}
+	for _, l := range s.r.Project.Loudspeakers {
+		set := fmt.Sprintf("gain %.1f dB, delay %.2f ms", l.GainDB, l.DelayMS)
+		if l.Inverted {
+			set += ", inverted"
+		}
+		rows = append(rows, append(append([]string{l.ID, "loudspeaker"}, at(l.At)...), set))
+	}
+	for _, q := range s.r.Project.Seats {
+		rows = append(rows, append(append([]string{q.ID, "seat"}, at(q.At)...), ""))
+	}
+	for _, a := range s.r.Project.Absorbers {
+		c := s.r.Room.Box.OnSurface(a.Surface, a.Centre[0], a.Centre[1])
+		rows = append(rows, append(append([]string{a.ID, "absorber, centre of the first unit"}, at(c)...), "on the "+a.Surface.String()))
+	}
+	s.table([]column{{"Id", 10, false}, {"What", 22, false}, {"From front", 10, true}, {"From left", 10, true}, {"From floor", 10, true}, {"", 24, false}}, rows)
+}
+
+// lanes is the sheet of before and after.
+func (s *writer) lanes() {
+	s.sheet = "Before and after"
+	s.page()
+	v := figures.DefaultView(s.r)
+	for _, l := range []figures.Lane{figures.ModesLane, figures.DensityLane, figures.LevelLane, figures.DecayLane} {
+		s.heading(l.Title())
+		height := (s.bottom()-margin)/4 - 30
+		c, end := on(s.doc, margin, s.y, s.w-2*margin, height)
+		figures.DrawLane(c, l, s.r, v, figures.Print())
+		end()
+		s.y += height
+	}
+}
+
+// absorberList is the sheet the joiner builds from.
+func (s *writer) absorberList() {
+	s.sheet = "Absorbers"
+	s.page()
+	s.heading("Absorbers")
+	if len(s.r.Absorbers) == 0 {
+		s.paragraph("The project has no absorbers.", textSize)
+		return
+	}
+	columns := []column{{"Id", 8, false}, {"Kind", 13, false}, {"Units", 5, true}, {"Front of one", 16, false}, {"Dimensions", 44, false}, {"Resonance", 16, false}, {"For mode", 12, false}}
+	var rows [][]string
+	for i, a := range s.r.Project.Absorbers {
+		row := s.r.Absorbers[i]
+		resonance := "broadband"
+		if o := row.Report.Oscillator; o != nil {
+			resonance = fmt.Sprintf("%.1f Hz, Q %.1f, acts %.0f to %.0f Hz", o.Natural, o.Q(), row.Report.Band[0], row.Report.Band[1])
+		}
+		target := ""
+		if row.Target >= 0 {
+			m := s.r.Modes[row.Target].Mode
+			target = fmt.Sprintf("%s, %.1f Hz", orderText(m.Order), m.Hz)
+		}
+		rows = append(rows, []string{a.ID, KindWords(a.Kind), fmt.Sprint(a.Units),
+			units.Small(a.Size[0], s.sys) + " × " + units.Small(a.Size[1], s.sys), strings.Join(Dimensions(a, s.sys), "; "), resonance, target})
+	}
+	s.table(columns, rows)
+	s.paragraph("Resonance and Q are calculated for the absorber alone; in its place the room adds its own air. Seal every cavity: a leak turns a tuned absorber into a badly tuned one. Common practice: cavity depth to ± 3 mm, holes to ± 0.2 mm; panel mass varies by 5 to 10 %, flow resistivity by 30 to 50 %, which moves a resonance by several per cent.", textSize)
+	s.tolerances()
+}
+
+// tolerances lists what each dimension does to the resonance.
+func (s *writer) tolerances() {
+	var rows [][]string
+	for _, a := range s.r.Absorbers {
+		for _, d := range a.Sensitivities {
+			rows = append(rows, []string{a.ID, d.Words(), fmt.Sprintf("%+.2f Hz", d.F0PerStep), fmt.Sprintf("%+.2f", d.QPerStep)})
+		}
+	}
+	if len(rows) == 0 {
+		return
+	}
+	s.heading("What a step of each dimension does")
+	s.table([]column{{"Id", 8, false}, {"Step", 40, false}, {"Resonance", 12, true}, {"Q", 12, true}}, rows)
+}
+
+// cautions is the last sheet.
+func (s *writer) cautions() {
+	s.sheet = "Cautions"
+	s.page()
+	s.heading("Cautions")
+	for i, c := range assets.Cautions() {
+		s.paragraph(fmt.Sprintf("%d. %s. %s", i+1, c.Topic, c.Text), 9)
+	}
+	s.heading("Limits of the models in this project")
+	for _, c := range s.r.Cautions {
+		s.paragraph("– "+c, 9)
+	}
+}

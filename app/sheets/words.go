@@ -1,0 +1,87 @@
+package sheets
+
+import (
+	"fmt"
+
+	"stillroom/app/project"
+	"stillroom/app/units"
+)
+
+// KindWords names a kind of absorber as a joiner would.
+func KindWords(kind string) string {
+	switch kind {
+	case "neck":
+		return "box with a neck"
+	case "panel":
+		return "panel on a cavity"
+	case "perforated":
+		return "perforated panel"
+	case "slotted":
+		return "slatted front"
+	case "microperforated":
+		return "micro-perforated panel"
+	default:
+		return "porous layer"
+	}
+}
+
+// Dimensions lists every dimension of an absorber in words with its unit.
+func Dimensions(a project.Absorber, s units.System) []string {
+	mm := func(words string, v float64) string { return words + " " + units.Small(v/1000, s) }
+	var out []string
+	add := func(t ...string) { out = append(out, t...) }
+	fill := func(f *project.Fill) {
+		if f != nil {
+			at := "against the wall"
+			if f.AtFace {
+				at = "at the face"
+			}
+			add(mm("fill", f.ThicknessMM)+" "+at, flow(f.FlowPaSM2))
+		}
+	}
+	switch {
+	case a.Neck != nil:
+		add("air in the box "+units.Litres(a.Neck.CavityL/1000, s), mm("mouth inside diameter", a.Neck.MouthDiameterMM), mm("neck length", a.Neck.LengthMM))
+		if a.Neck.Mouths > 1 {
+			add(fmt.Sprintf("%d necks", a.Neck.Mouths))
+		}
+		if a.Neck.GauzePaSM > 0 {
+			add(fmt.Sprintf("gauze %.0f Pa·s/m over the mouth", a.Neck.GauzePaSM))
+		}
+		if f := a.Neck.Fill; f != nil {
+			add(fmt.Sprintf("%.0f %% of the box filled", 100*f.Share), flow(f.FlowPaSM2))
+		}
+	case a.Panel != nil:
+		add("sheet "+units.Mass(a.Panel.MassKgM2, s), mm("thick", a.Panel.ThicknessMM), mm("cavity", a.Panel.CavityMM))
+		fill(a.Panel.Fill)
+	case a.Perforated != nil:
+		p := a.Perforated
+		add(mm("sheet", p.PanelMM), mm("holes", p.HoleMM), mm("square pitch", p.PitchMM), mm("cavity", p.CavityMM)+partition(p.Partitioned))
+		fill(p.Fill)
+		if p.GauzePaSM > 0 {
+			add(fmt.Sprintf("gauze %.0f Pa·s/m", p.GauzePaSM))
+		}
+	case a.Slotted != nil:
+		p := a.Slotted
+		add(mm("slats", p.SlatMM), mm("gaps", p.SlotMM), mm("thick", p.PanelMM), mm("cavity", p.CavityMM)+partition(p.Partitioned))
+		fill(p.Fill)
+	case a.Microperforated != nil:
+		p := a.Microperforated
+		add(mm("sheet", p.PanelMM), fmt.Sprintf("holes %.2f mm", p.HoleMM), fmt.Sprintf("square pitch %.2f mm", p.PitchMM), mm("cavity", p.CavityMM)+partition(p.Partitioned))
+	case a.Porous != nil:
+		add(mm("layer", a.Porous.ThicknessMM), flow(a.Porous.FlowPaSM2))
+		if a.Porous.GapMM > 0 {
+			add(mm("gap behind", a.Porous.GapMM))
+		}
+	}
+	return out
+}
+
+func flow(v float64) string { return fmt.Sprintf("flow resistivity %.0f Pa·s/m²", v) }
+
+func partition(p bool) string {
+	if p {
+		return ", partitioned"
+	}
+	return ""
+}

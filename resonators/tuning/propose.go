@@ -1,0 +1,268 @@
+package tuning
+
+import (
+	"cmp"
+	"math"
+	"slices"
+
+	"stillroom/acoustics"
+	"stillroom/resonators"
+)
+
+// meets is how near the resonance must come to where it is wanted.
+const meets = 0.005
+
+// mostUnits is how many units stand in a row at most.
+const mostUnits = 6
+
+// perPlace is how many candidates of one kind on one surface are kept, so that a
+// list shows different answers rather than neighbours of one.
+const perPlace = 2
+
+// Propose returns absorbers that can be built and meet the mode, best first:
+// those that bring both of the pair within the target before the rest, then by
+// the longer decay of the pair. It is deterministic. The list is empty where
+// nothing that fits the depth and the free surfaces can be tuned to the mode.
+func Propose(p Problem) []Candidate {
+	kinds := p.Kinds
+	if len(kinds) == 0 {
+		kinds = Kinds()
+	}
+	surfaces := p.Surfaces
+	if len(surfaces) == 0 {
+		all := acoustics.Surfaces()
+		surfaces = all[:]
+	}
+	stock := CommonStock()
+	if p.Stock != nil {
+		stock = *p.Stock
+	}
+	var out []Candidate
+	for _, s := range surfaces {
+		if slices.Contains(kinds, "neck") {
+			out = append(out, best(p.necks(s, stock))...)
+		}
+		if slices.Contains(kinds, "panel") {
+			out = append(out, best(p.panels(s, stock))...)
+		}
+	}
+	slices.SortStableFunc(out, byWorth)
+	if most := cmp.Or(p.Most, 12); len(out) > most {
+		out = out[:most]
+	}
+	for i := range out {
+		out[i].Tolerances = p.tolerances(out[i])
+	}
+	return out
+}
+
+// best keeps the best few.
+func best(c []Candidate) []Candidate {
+	slices.SortStableFunc(c, byWorth)
+	return c[:min(len(c), perPlace)]
+}
+
+// byWorth puts candidates that meet the target first, then those whose slower
+// pole decays faster.
+func byWorth(a, b Candidate) int {
+	switch {
+	case a.Meets && !b.Meets:
+		return -1
+	case b.Meets && !a.Meets:
+		return 1
+	}
+	return cmp.Compare(a.Pair[0].T60(), b.Pair[0].T60())
+}
+
+// panelSizes are fronts of membrane absorbers, as cut from common sheet, m.
+func panelSizes() [][2]float64 {
+	return [][2]float64{{0.6, 0.6}, {0.6, 1.2}, {1.2, 0.6}, {1.2, 1.2}, {1.2, 2.4}, {2.4, 1.2}}
+}
+
+// strengthAt returns the mean of û² that the strongest free spot for a row of
+// units has.
+func (p Problem) strengthAt(s acoustics.Surface, size [2]float64, units int, depth float64) (resonators.Placement, float64, bool) {
+	at, sum, ok := p.site(s, size, units, depth)
+	return at, sum / float64(units), ok
+}
+
+// necks proposes boxes on one surface: for each tube, front and number of boxes
+// the neck length that meets the mode.
+func (p Problem) necks(s acoustics.Surface, stock Stock) []Candidate {
+	var out []Candidate
+	board := stock.Boards[len(stock.Boards)/2]
+	inner := p.Depth - 2*board
+	if inner < 0.05 {
+		return nil
+	}
+	for _, side := range []float64{0.3, 0.4, 0.5, 0.6, 0.8} {
+		for units := 1; units <= mostUnits; units++ {
+			size := [2]float64{side, side}
+			at, squared, ok := p.strengthAt(s, size, units, p.Depth)
+			if !ok || squared < 1e-3 {
+				break
+			}
+			gross := (side - 2*board) * (side - 2*board) * inner
+			need := BoxVolume(p.needed(), squared, p.Mode.Norm, p.Box.Volume())
+			enough := gross*float64(units) >= need
+			for _, tube := range stock.Tubes {
+				if c, ok := p.neck(at, tube, board, inner, gross); ok {
+					out = append(out, c)
+				}
+			}
+			if enough {
+				break
+			}
+		}
+	}
+	return out
+}
+
+// neck tunes one box by the length of its neck and damps it by gauze.
+func (p Problem) neck(at resonators.Placement, tube Tube, board, inner, gross float64) (Candidate, bool) {
+	radius := tube.Inside() / 2
+	box := func(length float64) resonators.Neck {
+		inside := math.Max(0, length-board)
+		return resonators.Neck{
+			Cavity:      gross - math.Pi/4*sq(tube.Outside)*inside,
+			MouthRadius: radius, Length: length, Mouths: 1, Front: at.Size,
+		}
+	}
+	// The neck's inner end stays a diameter clear of the back board.
+	longest := inner + board - tube.Inside()
+	c := Candidate{At: at, Depth: p.Depth, Build: Build{Outside: [3]float64{at.Size[0], at.Size[1], p.Depth}, Board: board, Tube: tube}}
+	c.Absorber = box(board)
+	first, ok := p.settle(c)
+	if !ok {
+		return c, false
+	}
+	length, ok := p.solve(board, longest, first.WantedHz, at, func(x float64) resonators.Absorber { return box(x) })
+	if !ok {
+		return c, false
+	}
+	n := box(math.Round(length*1000) / 1000)
+	c.Absorber = n
+	c, ok = p.settle(c)
+	if !ok {
+		return c, false
+	}
+	if e, ok := resonators.EquivalentOf(n, p.Air, at.Size); ok {
+		omega := 2 * math.Pi * e.Oscillator.Natural
+		more := (2*c.WantedDamping*e.Mass*omega - e.Resistance) * math.Pi * sq(radius)
+		if n.Gauze = math.Round(more); n.Gauze > 0 {
+			c.Absorber = n
+			c, ok = p.settle(c)
+			if !ok {
+				return c, false
+			}
+		}
+	}
+	return c, math.Abs(c.Oscillator.Natural/c.WantedHz-1) <= meets
+}
+
+// panels proposes membranes on one surface: for each sheet, front and number of
+// units the cavity depth that meets the mode, with the fill that damps best.
+func (p Problem) panels(s acoustics.Surface, stock Stock) []Candidate {
+	var out []Candidate
+	for _, sheet := range stock.Panels {
+		for _, size := range panelSizes() {
+			for units := 1; units <= mostUnits; units++ {
+				at, squared, ok := p.strengthAt(s, size, units, p.Depth)
+				if !ok || squared < 1e-3 {
+					break
+				}
+				out = append(out, p.panelFills(at, sheet, stock)...)
+				need := PanelArea(p.needed(), squared, p.Mode.Norm, p.Box.Volume(), sheet.Mass, p.Mode.Hz, p.Air)
+				if size[0]*size[1]*float64(units) >= need {
+					break
+				}
+			}
+		}
+	}
+	return out
+}
+
+// panelFills tunes one panel with each fill, and without, and keeps the best.
+func (p Problem) panelFills(at resonators.Placement, sheet Sheet, stock Stock) []Candidate {
+	var out []Candidate
+	for i := -1; i < len(stock.Fills); i++ {
+		var fill *resonators.Fill
+		least := 0.02
+		if i >= 0 {
+			fill = &resonators.Fill{Thickness: stock.Fills[i], FlowResistivity: stock.FillFlow}
+			least = stock.Fills[i] + 0.01 // clear of the moving sheet
+		}
+		if c, ok := p.panel(at, sheet, fill, least); ok {
+			out = append(out, c)
+		}
+	}
+	slices.SortStableFunc(out, byWorth)
+	return out[:min(1, len(out))]
+}
+
+// panel tunes one membrane by the depth of its cavity.
+func (p Problem) panel(at resonators.Placement, sheet Sheet, fill *resonators.Fill, least float64) (Candidate, bool) {
+	front := func(cavity float64) resonators.Panel {
+		return resonators.Panel{Mass: sheet.Mass, Thickness: sheet.Thickness, Youngs: sheet.Youngs, Poisson: sheet.Poisson,
+			LossFactor: sheet.LossFactor, Cavity: cavity, Size: at.Size, Fill: fill}
+	}
+	c := Candidate{At: at, Build: Build{Sheet: sheet}}
+	c.Absorber = front(p.Depth - sheet.Thickness)
+	first, ok := p.settle(c)
+	if !ok {
+		return c, false
+	}
+	cavity, ok := p.solve(least, p.Depth-sheet.Thickness, first.WantedHz, at, func(x float64) resonators.Absorber { return front(x) })
+	if !ok {
+		return c, false
+	}
+	built := front(math.Round(cavity*1000) / 1000)
+	c.Absorber, c.Depth = built, built.Cavity+sheet.Thickness
+	c, ok = p.settle(c)
+	return c, ok && math.Abs(c.Oscillator.Natural/c.WantedHz-1) <= meets
+}
+
+// solve finds the dimension between lo and hi at which the absorber resonates at
+// hz in its place; it falls with the dimension. False where it does not reach.
+func (p Problem) solve(lo, hi, hz float64, at resonators.Placement, make func(float64) resonators.Absorber) (float64, bool) {
+	if !(lo < hi) {
+		return 0, false
+	}
+	f := func(x float64) float64 {
+		n := p.natural(make(x), at)
+		if n == 0 {
+			return math.NaN()
+		}
+		return n - hz
+	}
+	if flo, fhi := f(lo), f(hi); !(flo >= 0 && fhi <= 0) {
+		return 0, false
+	}
+	for range 30 {
+		mid := (lo + hi) / 2
+		if f(mid) > 0 {
+			lo = mid
+		} else {
+			hi = mid
+		}
+		if hi-lo < 2e-4 {
+			break
+		}
+	}
+	return (lo + hi) / 2, true
+}
+
+// tolerances returns each dimension's pull and how far it may be off while f0
+// moves by no more than half of the half-power width of the pair's slower pole.
+func (p Problem) tolerances(c Candidate) []Tolerance {
+	var out []Tolerance
+	room := c.Pair[0].HalfPowerWidth() / 2
+	for _, s := range resonators.Sensitivities(c.Absorber, p.Air, c.At.Size) {
+		t := Tolerance{Sensitivity: s, Allowed: math.Inf(1)}
+		if s.F0PerStep != 0 {
+			t.Allowed = math.Abs(room / s.F0PerStep * s.Step)
+		}
+		out = append(out, t)
+	}
+	return out
+}
