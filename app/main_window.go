@@ -8,6 +8,8 @@ import (
 	"runtime"
 	"strings"
 
+	"fyne.io/fyne/v2/app"
+
 	"stillroom/app/verbs"
 	"stillroom/app/window"
 )
@@ -22,7 +24,7 @@ func openWindow(file string) int {
 	if l := os.Getenv("LANG"); l == "" || l == "POSIX" || strings.HasPrefix(l, "C") {
 		os.Setenv("LANG", "en_US.UTF-8")
 	}
-	if err := window.Run(file); err != nil {
+	if err := window.Run(app.NewWithID(window.ID), file); err != nil {
 		fmt.Fprintln(os.Stderr, "stillroom:", err)
 		return verbs.AtFault
 	}

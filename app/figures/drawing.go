@@ -33,6 +33,9 @@ func (f frame) meets(g frame) bool {
 func DrawPlan(c draw.Canvas, r *study.Result, v View, s Style) {
 	p := &sheetPen{pen: pen{c, s}, r: r, v: v, up: 1}
 	p.at = PlanPlacement(r.Project, p.width(), p.height())
+	if v.PlanAt != nil {
+		p.at = v.PlanAt.holding(r.Project.Room.Length, r.Project.Room.Width)
+	}
 	p.sheet("Plan", [2]string{"front", "back"}, [2]string{"left", "right"})
 }
 
@@ -40,6 +43,9 @@ func DrawPlan(c draw.Canvas, r *study.Result, v View, s Style) {
 func DrawSection(c draw.Canvas, r *study.Result, v View, s Style) {
 	p := &sheetPen{pen: pen{c, s}, r: r, v: v, up: 2}
 	p.at = SectionPlacement(r.Project, p.width(), p.height())
+	if v.SectionAt != nil {
+		p.at = v.SectionAt.holding(r.Project.Room.Length, r.Project.Room.Height)
+	}
 	p.sheet("Long section", [2]string{"", ""}, [2]string{"", ""})
 }
 
@@ -111,16 +117,26 @@ func (p *sheetPen) pattern() {
 }
 
 // elsewhere is the mode's factor along the axis that the sheet does not show, at
-// the seat.
+// the seat; at least what keeps the sheet from being empty.
 func (p *sheetPen) elsewhere(m acoustics.Mode) float64 {
-	axis := 3 - p.up
-	if len(p.r.Project.Seats) == 0 || m.Order[axis] == 0 {
+	return math.Max(0.35, math.Abs(factorAtSeat(m, p.r.Project, 3-p.up, p.v.Seat)))
+}
+
+// factorAtSeat returns a mode's factor along one axis at a seat's place on it.
+func factorAtSeat(m acoustics.Mode, p project.Project, axis, seat int) float64 {
+	if len(p.Seats) == 0 || m.Order[axis] == 0 {
 		return 1
 	}
-	seat := p.r.Project.Seats[min(p.v.Seat, len(p.r.Project.Seats)-1)]
-	// A node at the seat's own height would leave the sheet empty: show at least
-	// where the mode is strong beside it.
-	return math.Max(0.35, math.Abs(math.Cos(float64(m.Order[axis])*math.Pi*seat.At[axis]/p.dims()[axis])))
+	at := p.Seats[min(seat, len(p.Seats)-1)].At[axis]
+	return math.Cos(float64(m.Order[axis]) * math.Pi * at / p.Room.Dimension(axis))
+}
+
+// PatternAt returns a mode's pressure at a point of a drawing, as a share of its
+// greatest: x along the length and y along the axis that runs up the sheet (1
+// plan, 2 section), on the third axis at the seat.
+func PatternAt(m acoustics.Mode, p project.Project, up int, x, y float64, seat int) float64 {
+	return math.Abs(math.Cos(float64(m.Order[0])*math.Pi*x/p.Room.Length) *
+		math.Cos(float64(m.Order[up])*math.Pi*y/p.Room.Dimension(up)) * factorAtSeat(m, p, 3-up, seat))
 }
 
 // walls draws the room's outline with the walls' thickness hinted.

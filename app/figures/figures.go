@@ -32,6 +32,9 @@ type View struct {
 	SelectedSeat int // −1 for none
 	US           bool
 	Ruler        bool // draw the frequency scale under this lane
+	// PlanAt and SectionAt hold the drawings where they are while something is
+	// dragged; nil fits them to the canvas.
+	PlanAt, SectionAt *Placement
 }
 
 // Style is the set of inks. Two inks carry the meaning everywhere: slate for

@@ -51,3 +51,9 @@ func (p Placement) To(x, y float64) (vg.Length, vg.Length) {
 func (p Placement) From(x, y vg.Length) (float64, float64) {
 	return float64((x - p.X0) / p.Scale), float64((y - p.Y0) / p.Scale)
 }
+
+// holding returns the placement with the room's size changed and nothing moved.
+func (p Placement) holding(width, height float64) Placement {
+	p.Width, p.Height = width, height
+	return p
+}
