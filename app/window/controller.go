@@ -4,7 +4,6 @@ import (
 	"context"
 	"fmt"
 	"io"
-	"os"
 	"time"
 
 	"fyne.io/fyne/v2"
@@ -58,6 +57,7 @@ func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *con
 	actions := Actions{Edit: c.edit, Select: c.selected, Ruler: c.ruler, Cursor: c.cursor, Dragging: c.dragging, Tune: c.tune, Ears: c.ears}
 	c.drawing = newDrawing(actions, do)
 	c.lanes = newLanes(actions, do)
+	c.lanes.list[0].pic.drawn = func() { c.log("frame %d", c.lanes.list[0].pic.frames) }
 	c.details = newDetails(actions, c.chooseFinish)
 	c.modes = newSchedule(modeColumns(), c.selectMode)
 	c.absorbers = newSchedule(absorberColumns(), func(i int) {
@@ -169,6 +169,7 @@ func (c *controller) result(r *study.Result, err error) {
 	c.frames++
 	c.refresh()
 	c.log("result stage %d frame %d", r.Stage, c.frames)
+	c.places()
 }
 
 // sameMode returns the index in a new result of the mode that the old one has at
@@ -348,24 +349,4 @@ func (c *controller) background(work func() error, done func(error)) {
 			}
 		})
 	}()
-}
-
-// log writes an event for those who watch the program from outside.
-func (c *controller) log(format string, args ...any) {
-	if c.events != nil {
-		fmt.Fprintf(c.events, "%d "+format+"\n", append([]any{time.Since(c.started).Milliseconds()}, args...)...)
-	}
-}
-
-// openLog opens the log that STILLROOM_UI_LOG names.
-func openLog() io.Writer {
-	name := os.Getenv("STILLROOM_UI_LOG")
-	if name == "" {
-		return nil
-	}
-	f, err := os.OpenFile(name, os.O_CREATE|os.O_WRONLY|os.O_APPEND, 0o644)
-	if err != nil {
-		return nil
-	}
-	return f
 }

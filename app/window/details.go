@@ -34,7 +34,8 @@ type details struct {
 	chooser  *widget.Select
 	names    []subject // in the order of the chooser
 	updates  []func()  // put the state's values into the form
-	settled  bool      // the chooser is being set by us
+	fields   []*field
+	settled  bool // the chooser is being set by us
 	choose   func(current string, chosen func(id string))
 	lastSeen Selection
 }
@@ -176,7 +177,7 @@ func (d *details) signature() string {
 }
 
 func (d *details) build() {
-	d.updates = nil
+	d.updates, d.fields = nil, nil
 	d.form.RemoveAll()
 	switch d.about.kind {
 	case "room":
@@ -277,6 +278,7 @@ func (d *details) whole(name, path string, at func(*project.Project) *int) {
 // add puts a field into the form.
 func (d *details) add(f *field, value func() string) {
 	f.changed = func() { d.form.Refresh() }
+	d.fields = append(d.fields, f)
 	row := container.New(pairLayout{}, f.name, f, f.fault)
 	d.form.Add(row)
 	d.updates = append(d.updates, func() { f.show(value(), d.state.Dark) })

@@ -24,7 +24,7 @@ type choice struct {
 func (c *controller) ask(title string, body fyne.CanvasObject, size fyne.Size, focus fyne.Focusable, choices ...choice) func() {
 	var box *dialog.CustomDialog
 	was := c.win.Canvas().OnTypedKey()
-	var first *widget.Button
+	var first *answerButton
 	closed := false
 	hide := func() {
 		if closed {
@@ -42,7 +42,7 @@ func (c *controller) ask(title string, body fyne.CanvasObject, size fyne.Size, f
 	}
 	row := container.NewHBox(layout.NewSpacer())
 	for _, x := range choices {
-		b := widget.NewButton(x.text, func() { answer(x) })
+		b := newAnswerButton(x.text, func() { answer(x) }, func() { answer(choices[len(choices)-1]) })
 		if x.main {
 			b.Importance = widget.HighImportance
 			first = b
@@ -72,6 +72,32 @@ func (c *controller) ask(title string, body fyne.CanvasObject, size fyne.Size, f
 		c.win.Canvas().Focus(first)
 	}
 	return hide
+}
+
+// answerButton is a dialog's button, which hears Enter and Esc while it has the
+// focus.
+type answerButton struct {
+	widget.Button
+	escape func()
+}
+
+func newAnswerButton(text string, tapped, escape func()) *answerButton {
+	b := &answerButton{escape: escape}
+	b.Text, b.OnTapped = text, tapped
+	b.ExtendBaseWidget(b)
+	return b
+}
+
+// TypedKey hears Enter and Esc.
+func (b *answerButton) TypedKey(e *fyne.KeyEvent) {
+	switch e.Name {
+	case fyne.KeyEscape:
+		b.escape()
+	case fyne.KeyReturn, fyne.KeyEnter:
+		b.OnTapped()
+	default:
+		b.Button.TypedKey(e)
+	}
 }
 
 // tell shows a message.

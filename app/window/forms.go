@@ -465,10 +465,7 @@ func (d *details) absorberFigures(i int) {
 		} else {
 			t = append(t, "Broadband: there is no oscillator.")
 		}
-		for _, w := range a.Report.Warnings {
-			t = append(t, w)
-		}
-		return strings.Join(t, "\n")
+		return strings.Join(append(t, a.Report.Warnings...), "\n")
 	})
 }
 

@@ -126,8 +126,8 @@ func (t *tuner) show(found []study.Proposal, err error) {
 	default:
 		t.say.SetText(fmt.Sprintf("%d proposals, calculated in the room as a whole, best first.", len(found)))
 	}
-	t.c.log("proposals %d", len(found))
 	t.pick(0)
+	t.c.log("proposals %d", len(found))
 }
 
 // pick shows one proposal's figures.
