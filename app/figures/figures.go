@@ -49,6 +49,8 @@ type Style struct {
 	Select  color.Color // what is selected
 	Text    vg.Length   // size of ordinary lettering
 	Hair    vg.Length   // thinnest line
+	// Laid says that the canvas has the paper's colour already.
+	Laid bool
 }
 
 // Frame is the fixed margin round a lane's data, so that all lanes share one

@@ -107,7 +107,7 @@ func TestInkFollowsLevel(t *testing.T) {
 	r := studied(t, "edit-suite")
 	v := figures.DefaultView(r)
 	const w, h = 1400, 240
-	img := figures.Render(nil, w, h, 1, func(c draw.Canvas) { figures.DrawLane(c, figures.ModesLane, r, v, figures.Paper()) })
+	img := figures.Render(nil, w, h, 1, figures.Paper().Paper, func(c draw.Canvas) { figures.DrawLane(c, figures.ModesLane, r, v, figures.Paper()) })
 	perPixel := vg.Inch / 96
 	dark := func(i int) float64 {
 		for _, hit := range figures.ModeHits(r, v, w*perPixel, h*perPixel) {
@@ -136,10 +136,12 @@ func BenchmarkPictures(b *testing.B) {
 	v.Mode = 4
 	for _, name := range []string{"modes", "density", "level", "decay", "absorption", "plan", "section"} {
 		b.Run(name, func(b *testing.B) {
-			paint, _ := figures.Painter(name, r, v, figures.Paper())
-			img := figures.Render(nil, 700, 200, 1, paint)
+			style := figures.Paper()
+			style.Laid = true
+			paint, _ := figures.Painter(name, r, v, style)
+			img := figures.Render(nil, 700, 200, 1, style.Paper, paint)
 			for b.Loop() {
-				figures.Render(img, 700, 200, 1, paint)
+				figures.Render(img, 700, 200, 1, style.Paper, paint)
 			}
 		})
 	}

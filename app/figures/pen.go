@@ -40,8 +40,12 @@ func (p pen) height() vg.Length { return p.c.Max.Y - p.c.Min.Y }
 // at moves from the canvas's lower left corner.
 func (p pen) at(x, y vg.Length) vg.Point { return vg.Point{X: p.c.Min.X + x, Y: p.c.Min.Y + y} }
 
-// ground fills the canvas with paper.
-func (p pen) ground() { p.fill(0, 0, p.width(), p.height(), p.s.Paper) }
+// ground fills the canvas with paper, where it is not laid already.
+func (p pen) ground() {
+	if !p.s.Laid {
+		p.fill(0, 0, p.width(), p.height(), p.s.Paper)
+	}
+}
 
 // fill fills a rectangle.
 func (p pen) fill(x0, y0, x1, y1 vg.Length, col color.Color) {
@@ -96,12 +100,20 @@ func (p pen) disc(x, y, r vg.Length, col color.Color) {
 	p.c.Fill(path)
 }
 
-// ring strokes a circle.
+// ring strokes a circle, as a polygon of so many sides that no eye counts them.
 func (p pen) ring(x, y, r, width vg.Length, col color.Color) {
+	const sides = 14
 	var path vg.Path
-	c := p.at(x, y)
-	path.Move(vg.Point{X: c.X + r, Y: c.Y})
-	path.Arc(c, r, 0, 2*math.Pi)
+	for i := range sides {
+		sin, cos := math.Sincos(2 * math.Pi * float64(i) / sides)
+		q := p.at(x+r*vg.Length(cos), y+r*vg.Length(sin))
+		if i == 0 {
+			path.Move(q)
+		} else {
+			path.Line(q)
+		}
+	}
+	path.Close()
 	p.stroke(width, col)
 	p.c.Stroke(path)
 }

@@ -3,6 +3,8 @@ package figures
 import (
 	"fmt"
 	"image"
+	"image/color"
+	imagedraw "image/draw"
 	"io"
 
 	"git.sr.ht/~sbinet/gg"
@@ -16,12 +18,13 @@ import (
 )
 
 // Render draws into an image of the given size in pixels, one window unit being
-// scale pixels. A buffer of that size may be given to be drawn over and
-// returned; nil makes a new one.
-func Render(buffer *image.RGBA, w, h int, scale float64, paint func(draw.Canvas)) *image.RGBA {
+// scale pixels, on a ground of paper's colour. A buffer of that size may be
+// given to be drawn over and returned; nil makes a new one.
+func Render(buffer *image.RGBA, w, h int, scale float64, paper color.Color, paint func(draw.Canvas)) *image.RGBA {
 	if buffer == nil || buffer.Rect.Dx() != w || buffer.Rect.Dy() != h {
 		buffer = image.NewRGBA(image.Rect(0, 0, w, h))
 	}
+	imagedraw.Draw(buffer, buffer.Rect, image.NewUniform(paper), image.Point{}, imagedraw.Src)
 	ctx := gg.NewContextForRGBA(buffer)
 	ctx.SetLineCapButt()
 	ctx.InvertY()

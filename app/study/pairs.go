@@ -28,22 +28,38 @@ func coupling(box acoustics.Box, m acoustics.Mode, units []acoustics.Unit, owner
 	return sum / float64(n)
 }
 
+// settle notes where each absorber resonates in its place: its first unit's own
+// resonance with the room's air before it.
+func (r *Result) settle(field *acoustics.Field, units []acoustics.Unit) {
+	for i, u := range units {
+		row := &r.Absorbers[u.Owner]
+		if row.InRoomHz > 0 || row.Report.Oscillator == nil {
+			continue
+		}
+		row.InRoomHz = row.Report.Oscillator.Natural
+		if hz, ok := field.UnitResonance(i); ok {
+			row.InRoomHz = hz
+		}
+	}
+}
+
 // assign finds for each absorber the mode it is tuned to, the nearest in
 // frequency that lies in its band of action and that it couples with, and for
 // each mode the absorbers that act on it.
 func (r *Result) assign(units []acoustics.Unit) {
 	for a := range r.Absorbers {
 		row := &r.Absorbers[a]
-		osc := row.Report.Oscillator
-		if osc == nil {
+		if row.Report.Oscillator == nil {
 			continue
 		}
 		best := math.Inf(1)
+		// The room's air moves the whole band of action with the resonance.
+		moved := row.InRoomHz / row.Report.Oscillator.Natural
 		for i := range r.Modes {
 			m := &r.Modes[i]
-			if m.Mode.Hz < row.Report.Band[0] || m.Mode.Hz > row.Report.Band[1] {
+			if m.Mode.Hz < row.Report.Band[0]*moved || m.Mode.Hz > row.Report.Band[1]*moved {
 				// A mode within its own half-power width of a sharp absorber is met too.
-				if math.Abs(m.Mode.Hz-osc.Natural) > m.Oscillator.HalfPowerWidth() {
+				if math.Abs(m.Mode.Hz-row.InRoomHz) > m.Oscillator.HalfPowerWidth() {
 					continue
 				}
 			}
@@ -51,7 +67,7 @@ func (r *Result) assign(units []acoustics.Unit) {
 				continue
 			}
 			m.Absorbers = append(append([]int(nil), m.Absorbers...), a)
-			if d := math.Abs(math.Log(m.Mode.Hz / osc.Natural)); d < best {
+			if d := math.Abs(math.Log(m.Mode.Hz / row.InRoomHz)); d < best {
 				best, row.Target = d, i
 			}
 		}

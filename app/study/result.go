@@ -111,7 +111,10 @@ type AbsorberRow struct {
 	ID, Kind string
 	Design   resonators.Absorber
 	Report   resonators.Report
-	Units    int     // as placed
+	Units    int // as placed
+	// InRoomHz is where it resonates in its place, with the air that the room
+	// puts before it; 0 where it is broadband.
+	InRoomHz float64
 	AreaM2   float64 // of all units together
 	// Target is the index in Modes of the mode it is nearest tuned to and couples
 	// with; −1 where there is none.

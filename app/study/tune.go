@@ -100,16 +100,14 @@ func (r *Result) problem(q TuneRequest) tuning.Problem {
 	if depth == 0 {
 		depth = defaultDepth
 	}
+	loads := acoustics.NewAirLoads(r.Room.Box)
 	p := tuning.Problem{
 		Mode: r.Modes[q.Mode].Mode, Box: r.Room.Box, Air: r.Air,
 		Kinds: q.Kinds, Surfaces: q.Surfaces, Depth: depth, TargetT60: r.target(q),
-		NaturalInRoom: func(a resonators.Absorber, at resonators.Placement) (float64, bool) {
+		Reactance: func(a resonators.Absorber, at resonators.Placement, hz float64) float64 {
 			at.Units = 1
-			units := resonators.PlaceUnits(a, r.Air, at, 0)
-			if len(units) != 1 {
-				return 0, false
-			}
-			return r.Room.UnitResonance(units[0])
+			u := resonators.PlaceUnits(a, r.Air, at, 0)[0]
+			return u.Reactance(hz, loads.Of(u.Patch), r.Air.Density)
 		},
 	}
 	for _, a := range r.Project.Absorbers {

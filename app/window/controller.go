@@ -31,6 +31,7 @@ type controller struct {
 	recovery recovery
 	events   io.Writer // the log that tests read; nil for none
 
+	easel     *easel
 	drawing   *drawing
 	lanes     *lanes
 	details   *details
@@ -55,9 +56,10 @@ func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *con
 	c.state = State{Selection: Selection{-1, -1, -1, -1, -1}, FromHz: rulerFrom, ToHz: rulerTo, US: s.US, Dark: s.Dark}
 	c.runner = &runner{do: do, options: study.Options{Points: 400, ModesToHz: 250}, show: c.result, busy: c.busy}
 	actions := Actions{Edit: c.edit, Select: c.selected, Ruler: c.ruler, Cursor: c.cursor, Dragging: c.dragging, Tune: c.tune, Ears: c.ears}
-	c.drawing = newDrawing(actions, do)
-	c.lanes = newLanes(actions, do)
-	c.lanes.list[0].pic.drawn = func() { c.log("frame %d", c.lanes.list[0].pic.frames) }
+	c.easel = &easel{do: do}
+	c.easel.hung = func() { c.log("frame %d", c.easel.rounds) }
+	c.drawing = newDrawing(actions, c.easel)
+	c.lanes = newLanes(actions, c.easel)
 	c.details = newDetails(actions, c.chooseFinish)
 	c.modes = newSchedule(modeColumns(), c.selectMode)
 	c.absorbers = newSchedule(absorberColumns(), func(i int) {
@@ -134,6 +136,12 @@ func (c *controller) changed() {
 	c.state.Project = c.history.Current()
 	c.trimSelection()
 	c.runner.submit(c.state.Project)
+	if c.state.Dragging {
+		// What hangs on the result follows with the result.
+		c.drawing.show(c.state)
+		c.details.show(c.state)
+		return
+	}
 	c.title()
 	c.refresh()
 }
@@ -167,7 +175,15 @@ func (c *controller) result(r *study.Result, err error) {
 		c.state.Selection.Mode = sameMode(old, r, m)
 	}
 	c.frames++
-	c.refresh()
+	if c.state.Dragging {
+		c.lanes.show(c.state)
+		c.showFinding()
+		if c.frames%4 == 0 {
+			c.schedules()
+		}
+	} else {
+		c.refresh()
+	}
 	c.log("result stage %d frame %d", r.Stage, c.frames)
 	c.places()
 }
@@ -194,13 +210,17 @@ func (c *controller) refresh() {
 	c.drawing.show(s)
 	c.lanes.show(s)
 	c.details.show(s)
-	if !s.Dragging || c.frames%4 == 0 {
-		c.modes.show(modeRows(s), s.Selection.Mode, s.Dark)
-		c.absorbers.show(absorberRows(s), s.Selection.Absorber, s.Dark)
-	}
+	c.schedules()
 	c.showFinding()
 	style := look{s.Dark}.style()
 	c.status.Color, c.working.Color = style.Ink, style.Ink
+}
+
+// schedules shows the rows of both schedules.
+func (c *controller) schedules() {
+	s := c.state
+	c.modes.show(modeRows(s), s.Selection.Mode, s.Dark)
+	c.absorbers.show(absorberRows(s), s.Selection.Absorber, s.Dark)
 }
 
 // fits reports whether a result has what the project's lists ask for.

@@ -3,6 +3,7 @@ package window
 import (
 	"fmt"
 	"math"
+	"time"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -29,7 +30,7 @@ type drawing struct {
 	plan, section *picture
 	reading       *canvas.Text
 	grab          *grab
-	last          fyne.Position // of the pointer in a drag
+	pace          throttle
 }
 
 var (
@@ -69,8 +70,8 @@ type grab struct {
 	moved          bool
 }
 
-func newDrawing(a Actions, do func(func())) *drawing {
-	d := &drawing{actions: a, plan: newPicture(do), section: newPicture(do), reading: canvas.NewText("", nil)}
+func newDrawing(a Actions, e *easel) *drawing {
+	d := &drawing{actions: a, plan: newPicture(e), section: newPicture(e), reading: canvas.NewText("", nil), pace: throttle{do: e.do, pace: dragPace}}
 	d.reading.TextSize = 10.5
 	d.ExtendBaseWidget(d)
 	return d
@@ -86,12 +87,13 @@ func (d *drawing) show(s State) {
 	r.Project = s.Project
 	r.Room.Box.Length, r.Room.Box.Width, r.Room.Box.Height = s.Project.Room.Length, s.Project.Room.Width, s.Project.Room.Height
 	style := look{s.Dark}.style()
+	style.Laid = true
 	v := s.view()
 	if d.grab != nil {
 		v.PlanAt, v.SectionAt = &d.grab.planAt, &d.grab.sectAt
 	}
-	d.plan.show(func(c draw.Canvas) { figures.DrawPlan(c, &r, v, style) })
-	d.section.show(func(c draw.Canvas) { figures.DrawSection(c, &r, v, style) })
+	d.plan.show(style.Paper, func(c draw.Canvas) { figures.DrawPlan(c, &r, v, style) })
+	d.section.show(style.Paper, func(c draw.Canvas) { figures.DrawSection(c, &r, v, style) })
 	d.reading.Color = style.Ink
 }
 
@@ -150,6 +152,9 @@ func (d *drawing) position(sheet int, x, y float64) fyne.Position {
 	lx, ly := at.To(x, y)
 	return fyne.NewPos(pic.Position().X+float32(lx/unit), pic.Position().Y+pic.Size().Height-float32(ly/unit))
 }
+
+// dragPace is the least time between two edits of a drag.
+const dragPace = 25 * time.Millisecond
 
 // reach is how near the pointer must be to a thing, window units.
 const reach = 9
@@ -259,14 +264,19 @@ func (d *drawing) Dragged(e *fyne.DragEvent) {
 		g.moved = true
 		d.actions.Dragging(true)
 	}
-	d.last = e.Position
+	at := e.Position
+	d.pace.call(func() { d.dragTo(g, at) })
+}
+
+// dragTo moves what is held to where the pointer is.
+func (d *drawing) dragTo(g *grab, at fyne.Position) {
 	scale := g.planAt.Scale
 	if g.sheet == 1 {
 		scale = g.sectAt.Scale
 	}
 	perMetre := float64(scale / unit)
-	dx := float64(e.Position.X-g.from.X) / perMetre
-	dy := -float64(e.Position.Y-g.from.Y) / perMetre
+	dx := float64(at.X-g.from.X) / perMetre
+	dy := -float64(at.Y-g.from.Y) / perMetre
 	if p, ok := moved(g.start, g.hold, dx, dy, snap); ok {
 		d.actions.Edit(g.label(), p, g.key(), false)
 	}
@@ -274,6 +284,7 @@ func (d *drawing) Dragged(e *fyne.DragEvent) {
 
 // DragEnd puts the drag down as one step.
 func (d *drawing) DragEnd() {
+	d.pace.flush()
 	g := d.grab
 	d.grab = nil
 	if g == nil || !g.moved {
@@ -285,6 +296,7 @@ func (d *drawing) DragEnd() {
 
 // cancel takes a drag back.
 func (d *drawing) cancel() {
+	d.pace.held = nil
 	g := d.grab
 	d.grab = nil
 	if g != nil && g.moved {

@@ -36,7 +36,7 @@ func (c *controller) begin(p project.Project, path string, onDisk bool) {
 	c.history = project.NewHistory(p, onDisk)
 	c.state.Selection = Selection{-1, -1, -1, -1, -1}
 	c.state.Result, c.state.Ears = nil, 0
-	c.runner.former = nil
+	c.runner.restart()
 	c.forget()
 	c.changed()
 	c.log("document %s", path)

@@ -51,7 +51,7 @@ var (
 	_ desktop.Hoverable   = (*lanes)(nil)
 )
 
-func newLanes(a Actions, do func(func())) *lanes {
+func newLanes(a Actions, e *easel) *lanes {
 	l := &lanes{actions: a, cursor: canvas.NewLine(nil)}
 	l.cursor.Hide()
 	weights := map[figures.Lane]float32{figures.ModesLane: 1.25, figures.LevelLane: 1.2}
@@ -60,7 +60,7 @@ func newLanes(a Actions, do func(func())) *lanes {
 		if w == 0 {
 			w = 0.8
 		}
-		one := &lane{name: name, title: canvas.NewText("", nil), reading: canvas.NewText("", nil), pic: newPicture(do), weight: w}
+		one := &lane{name: name, title: canvas.NewText("", nil), reading: canvas.NewText("", nil), pic: newPicture(e), weight: w}
 		one.title.TextSize, one.reading.TextSize = 11, 10.5
 		one.reading.Alignment = fyne.TextAlignTrailing
 		l.list = append(l.list, one)
@@ -73,6 +73,7 @@ func newLanes(a Actions, do func(func())) *lanes {
 func (l *lanes) show(s State) {
 	l.state = s
 	style := look{s.Dark}.style()
+	style.Laid = true
 	l.cursor.StrokeColor = style.Ink
 	l.cursor.StrokeWidth = 1
 	for _, one := range l.list {
@@ -88,7 +89,7 @@ func (l *lanes) show(s State) {
 		}
 		r, v, name := s.Result, s.view(), one.name
 		v.Ruler = one == l.lowest()
-		one.pic.show(func(c draw.Canvas) { figures.DrawLane(c, name, r, v, style) })
+		one.pic.show(style.Paper, func(c draw.Canvas) { figures.DrawLane(c, name, r, v, style) })
 	}
 	l.read()
 }

@@ -2,7 +2,7 @@ package window
 
 import (
 	"context"
-	"sync/atomic"
+	"sync"
 
 	"stillroom/app/project"
 	"stillroom/app/study"
@@ -10,81 +10,109 @@ import (
 
 // runner studies projects in the background. The latest edit wins: a run that an
 // edit has overtaken is let come as far as the levels, so that the window
-// follows a drag, and then gives way. All its methods belong to the UI
-// goroutine; do puts a function there.
+// follows a drag, and then gives way. Its own goroutine takes up the next
+// project at once; only results go through do to the UI goroutine.
 type runner struct {
 	do      func(func())
 	options study.Options
-	// show is given each result, complete or not; nil with an error.
+	// show is given each result, complete or not; nil with an error. busy is told
+	// when work begins or ends. Both are called on the UI goroutine.
 	show func(*study.Result, error)
-	// idle is told when the runner begins or ends work.
 	busy func(bool)
 
-	running bool
+	mutex   sync.Mutex
 	next    *project.Project
-	former  *study.Result
-	waiting atomic.Bool // an edit waits: seen from the worker
-	cancel  context.CancelFunc
+	fresh   bool // forget the former result first
+	running bool
 	levels  bool // the run has come as far as the levels
+	cancel  context.CancelFunc
 }
 
 // submit asks for a project to be studied.
 func (r *runner) submit(p project.Project) {
+	r.mutex.Lock()
+	defer r.mutex.Unlock()
 	r.next = &p
-	r.waiting.Store(true)
 	if r.running {
 		if r.levels {
 			r.cancel()
 		}
 		return
 	}
-	r.start()
+	r.running = true
+	r.busy(true)
+	go r.work()
+}
+
+// restart forgets the former result: another document begins.
+func (r *runner) restart() {
+	r.mutex.Lock()
+	defer r.mutex.Unlock()
+	r.fresh = true
 }
 
 // stop ends what is running and forgets what waits.
 func (r *runner) stop() {
+	r.mutex.Lock()
+	defer r.mutex.Unlock()
 	r.next = nil
 	if r.running {
 		r.cancel()
 	}
 }
 
-func (r *runner) start() {
-	p := *r.next
-	r.next = nil
-	r.waiting.Store(false)
-	r.running, r.levels = true, false
-	ctx, cancel := context.WithCancel(context.Background())
-	r.cancel = cancel
-	former, options := r.former, r.options
-	r.busy(true)
-	go func() {
-		result, err := study.Run(ctx, p, options, former, func(partial *study.Result) {
-			r.do(func() {
-				r.levels, r.former = true, partial
-				r.show(partial, nil)
-			})
-			if r.waiting.Load() {
-				cancel()
-			}
-		})
-		r.do(func() { r.finished(result, err, ctx.Err() != nil) })
+// work studies what is submitted until nothing waits.
+func (r *runner) work() {
+	var former *study.Result
+	for {
+		r.mutex.Lock()
+		if r.next == nil {
+			r.running = false
+			r.mutex.Unlock()
+			r.do(func() { r.rested() })
+			return
+		}
+		p := *r.next
+		r.next, r.levels = nil, false
+		if r.fresh {
+			former, r.fresh = nil, false
+		}
+		ctx, cancel := context.WithCancel(context.Background())
+		r.cancel = cancel
+		r.mutex.Unlock()
+		former = r.run(ctx, p, former)
 		cancel()
-	}()
+	}
 }
 
-func (r *runner) finished(result *study.Result, err error, overtaken bool) {
-	r.running = false
+// run studies one project and returns the furthest result it has.
+func (r *runner) run(ctx context.Context, p project.Project, former *study.Result) *study.Result {
+	result, err := study.Run(ctx, p, r.options, former, func(partial *study.Result) {
+		former = partial
+		r.do(func() { r.show(partial, nil) })
+		r.mutex.Lock()
+		defer r.mutex.Unlock()
+		r.levels = true
+		if r.next != nil {
+			r.cancel()
+		}
+	})
 	switch {
 	case err == nil:
-		r.former = result
-		r.show(result, nil)
-	case !overtaken:
-		r.show(nil, err)
+		r.do(func() { r.show(result, nil) })
+		return result
+	case ctx.Err() == nil:
+		r.do(func() { r.show(nil, err) })
 	}
-	if r.next != nil {
-		r.start()
-		return
+	return former
+}
+
+// rested tells that work has ended, unless more has come meanwhile.
+func (r *runner) rested() {
+	r.mutex.Lock()
+	running := r.running
+	r.mutex.Unlock()
+	if !running {
+		r.busy(false)
 	}
-	r.busy(false)
 }

@@ -39,10 +39,11 @@ type Problem struct {
 	Goal      Goal
 	// Stock is what may be built from; nil: CommonStock.
 	Stock *Stock
-	// NaturalInRoom, where not nil, gives the natural frequency in Hz that the
-	// absorber has at its spot in the room, with the air mass that the room puts
-	// before it; false: by the absorber's own reckoning.
-	NaturalInRoom func(a resonators.Absorber, at resonators.Placement) (hz float64, ok bool)
+	// Reactance, where not nil, gives the imaginary part of the absorber's
+	// impedance at its spot in the room at a frequency in Hz, with the air mass
+	// that the room puts before it, in any unit: only its zero counts. nil: by the
+	// absorber's own reckoning.
+	Reactance func(a resonators.Absorber, at resonators.Placement, hz float64) float64
 	// Most is how many candidates are wanted; 0: 12.
 	Most int
 }
@@ -118,19 +119,31 @@ func (p Problem) wanted(mu float64) (hz, damping float64) {
 	return o.Natural, FastestDamping(o.DampingRatio(), mu)
 }
 
-// natural returns the absorber's natural frequency at its spot, Hz; 0 where
-// there is none.
-func (p Problem) natural(a resonators.Absorber, at resonators.Placement) float64 {
-	if p.NaturalInRoom != nil {
-		if hz, ok := p.NaturalInRoom(a, at); ok {
-			return hz
-		}
+// reactance returns the imaginary part of the absorber's impedance at a
+// frequency, at its spot.
+func (p Problem) reactance(a resonators.Absorber, at resonators.Placement, hz float64) float64 {
+	if p.Reactance != nil {
+		return p.Reactance(a, at, hz)
 	}
-	e, ok := resonators.EquivalentOf(a, p.Air, at.Size)
-	if !ok {
+	return imag(a.Specific(complex(2*math.Pi*hz, 0), p.Air))
+}
+
+// natural returns the absorber's natural frequency at its spot, Hz, near its
+// own reckoning; 0 where there is none.
+func (p Problem) natural(a resonators.Absorber, at resonators.Placement, alone float64) float64 {
+	lo, hi := alone/2, alone*2
+	if p.reactance(a, at, lo) >= 0 || p.reactance(a, at, hi) <= 0 {
 		return 0
 	}
-	return e.Oscillator.Natural
+	for range 40 {
+		mid := (lo + hi) / 2
+		if p.reactance(a, at, mid) < 0 {
+			lo = mid
+		} else {
+			hi = mid
+		}
+	}
+	return (lo + hi) / 2
 }
 
 // settle fills in what follows from a candidate's absorber and place.
@@ -150,7 +163,10 @@ func (p Problem) settle(c Candidate) (Candidate, bool) {
 	c.LeastCoupling = p.needed()
 	c.WantedHz, c.WantedDamping = p.wanted(c.Coupling)
 	c.Oscillator = e.Oscillator
-	c.Oscillator.Natural = p.natural(c.Absorber, c.At)
+	c.Oscillator.Natural = p.natural(c.Absorber, c.At, e.Oscillator.Natural)
+	if c.Oscillator.Natural == 0 {
+		return c, false
+	}
 	c.Pair = Pair(p.Mode.Oscillator(), c.Oscillator, c.Coupling)
 	c.Meets = c.Pair[0].T60() <= p.target()
 	mean := squared / float64(c.At.Units)

@@ -46,13 +46,30 @@ func Propose(p Problem) []Candidate {
 			out = append(out, best(p.panels(s, stock))...)
 		}
 	}
-	slices.SortStableFunc(out, byWorth)
-	if most := cmp.Or(p.Most, 12); len(out) > most {
-		out = out[:most]
-	}
+	out = shortList(out, kinds, cmp.Or(p.Most, 12))
 	for i := range out {
 		out[i].Tolerances = p.tolerances(out[i])
 	}
+	return out
+}
+
+// shortList keeps the best, an equal share of each kind where there are enough,
+// best first.
+func shortList(all []Candidate, kinds []string, most int) []Candidate {
+	slices.SortStableFunc(all, byWorth)
+	var out, rest []Candidate
+	taken := map[string]int{}
+	for _, c := range all {
+		k := c.Absorber.Kind()
+		if taken[k] < most/len(kinds) {
+			taken[k]++
+			out = append(out, c)
+		} else {
+			rest = append(rest, c)
+		}
+	}
+	out = append(out, rest[:min(len(rest), most-len(out))]...)
+	slices.SortStableFunc(out, byWorth)
 	return out
 }
 
@@ -118,7 +135,9 @@ func (p Problem) necks(s acoustics.Surface, stock Stock) []Candidate {
 	return out
 }
 
-// neck tunes one box by the length of its neck and damps it by gauze.
+// neck tunes one box to the mode by the length of its neck and damps it by gauze.
+// The goal's own tuning, a per cent or two lower for the lowest peak, is within
+// what building leaves.
 func (p Problem) neck(at resonators.Placement, tube Tube, board, inner, gross float64) (Candidate, bool) {
 	radius := tube.Inside() / 2
 	box := func(length float64) resonators.Neck {
@@ -131,12 +150,7 @@ func (p Problem) neck(at resonators.Placement, tube Tube, board, inner, gross fl
 	// The neck's inner end stays a diameter clear of the back board.
 	longest := inner + board - tube.Inside()
 	c := Candidate{At: at, Depth: p.Depth, Build: Build{Outside: [3]float64{at.Size[0], at.Size[1], p.Depth}, Board: board, Tube: tube}}
-	c.Absorber = box(board)
-	first, ok := p.settle(c)
-	if !ok {
-		return c, false
-	}
-	length, ok := p.solve(board, longest, first.WantedHz, at, func(x float64) resonators.Absorber { return box(x) })
+	length, ok := p.solve(board, longest, p.Mode.Hz, at, func(x float64) resonators.Absorber { return box(x) })
 	if !ok {
 		return c, false
 	}
@@ -157,25 +171,27 @@ func (p Problem) neck(at resonators.Placement, tube Tube, board, inner, gross fl
 			}
 		}
 	}
-	return c, math.Abs(c.Oscillator.Natural/c.WantedHz-1) <= meets
+	return c, math.Abs(c.Oscillator.Natural/p.Mode.Hz-1) <= meets
 }
 
 // panels proposes membranes on one surface: for each sheet, front and number of
 // units the cavity depth that meets the mode, with the fill that damps best.
 func (p Problem) panels(s acoustics.Surface, stock Stock) []Candidate {
 	var out []Candidate
-	for _, sheet := range stock.Panels {
-		for _, size := range panelSizes() {
-			for units := 1; units <= mostUnits; units++ {
-				at, squared, ok := p.strengthAt(s, size, units, p.Depth)
-				if !ok || squared < 1e-3 {
-					break
+	for _, size := range panelSizes() {
+		built := make([]bool, len(stock.Panels)) // enough of this sheet
+		for units := 1; units <= mostUnits; units++ {
+			at, squared, ok := p.strengthAt(s, size, units, p.Depth)
+			if !ok || squared < 1e-3 {
+				break
+			}
+			for i, sheet := range stock.Panels {
+				if built[i] {
+					continue
 				}
 				out = append(out, p.panelFills(at, sheet, stock)...)
 				need := PanelArea(p.needed(), squared, p.Mode.Norm, p.Box.Volume(), sheet.Mass, p.Mode.Hz, p.Air)
-				if size[0]*size[1]*float64(units) >= need {
-					break
-				}
+				built[i] = size[0]*size[1]*float64(units) >= need
 			}
 		}
 	}
@@ -207,46 +223,29 @@ func (p Problem) panel(at resonators.Placement, sheet Sheet, fill *resonators.Fi
 			LossFactor: sheet.LossFactor, Cavity: cavity, Size: at.Size, Fill: fill}
 	}
 	c := Candidate{At: at, Build: Build{Sheet: sheet}}
-	c.Absorber = front(p.Depth - sheet.Thickness)
-	first, ok := p.settle(c)
-	if !ok {
-		return c, false
-	}
-	cavity, ok := p.solve(least, p.Depth-sheet.Thickness, first.WantedHz, at, func(x float64) resonators.Absorber { return front(x) })
+	cavity, ok := p.solve(least, p.Depth-sheet.Thickness, p.Mode.Hz, at, func(x float64) resonators.Absorber { return front(x) })
 	if !ok {
 		return c, false
 	}
 	built := front(math.Round(cavity*1000) / 1000)
 	c.Absorber, c.Depth = built, built.Cavity+sheet.Thickness
 	c, ok = p.settle(c)
-	return c, ok && math.Abs(c.Oscillator.Natural/c.WantedHz-1) <= meets
+	return c, ok && math.Abs(c.Oscillator.Natural/p.Mode.Hz-1) <= meets
 }
 
-// solve finds the dimension between lo and hi at which the absorber resonates at
-// hz in its place; it falls with the dimension. False where it does not reach.
+// solve finds the dimension between lo and hi at which the absorber in its place
+// resonates at hz; its reactance there rises with the dimension. False where it
+// does not reach.
 func (p Problem) solve(lo, hi, hz float64, at resonators.Placement, make func(float64) resonators.Absorber) (float64, bool) {
-	if !(lo < hi) {
+	if !(lo < hi) || p.reactance(make(lo), at, hz) > 0 || p.reactance(make(hi), at, hz) < 0 {
 		return 0, false
 	}
-	f := func(x float64) float64 {
-		n := p.natural(make(x), at)
-		if n == 0 {
-			return math.NaN()
-		}
-		return n - hz
-	}
-	if flo, fhi := f(lo), f(hi); !(flo >= 0 && fhi <= 0) {
-		return 0, false
-	}
-	for range 30 {
+	for hi-lo > 2e-4 {
 		mid := (lo + hi) / 2
-		if f(mid) > 0 {
+		if p.reactance(make(mid), at, hz) < 0 {
 			lo = mid
 		} else {
 			hi = mid
-		}
-		if hi-lo < 2e-4 {
-			break
 		}
 	}
 	return (lo + hi) / 2, true
