@@ -22,7 +22,7 @@ func (f *Field) contour(upTo float64, paths []path) rectangle {
 	e := rectangle{
 		left: math.Pi * f.room.lowestHz(),
 		low:  -0.05, // δ is never below 0: no zero lies near this edge
-		high: 3 * math.Ln10 / shortestT60,
+		high: tallest,
 	}
 	best := -1.0
 	for i := range 21 {
@@ -57,7 +57,7 @@ func inside(paths []path, e rectangle) int {
 // count returns how many poles the treated room has inside a contour: the zeros
 // of the determinant by the argument principle, each bare mode that units touch
 // being a pole of it, and the modes that none touches.
-func (f *Field) count(ctx context.Context, e rectangle) (int, error) {
+func (f *Field) count(ctx context.Context, e rectangle, distants []distant) (int, error) {
 	n := 0
 	for i := range f.modes.damped {
 		if e.holds(f.bareRoot(i)) {
@@ -85,7 +85,7 @@ func (f *Field) count(ctx context.Context, e rectangle) (int, error) {
 	var group sync.WaitGroup
 	for w := range workers {
 		group.Go(func() {
-			d := f.newFollower()
+			d := f.newFollower(distants)
 			for i := w; i < len(ends) && ctx.Err() == nil; i += workers {
 				a, b := ends[i][0], ends[i][1]
 				turns[i] = d.turn(a, b, d.phase(a), d.phase(b), 14)
@@ -128,10 +128,28 @@ func wrap(x float64) float64 { return x - 2*math.Pi*math.Round(x/(2*math.Pi)) }
 
 // recover looks for the zeros that the count says are missing, by Newton's
 // method on the determinant with the known zeros divided out and the bare
-// modes' poles multiplied in, from starts at the bare modes, the units'
-// resonances and between.
-func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted int) ([]path, error) {
-	w := f.newFollower()
+// modes' poles multiplied in, from starts at the lost paths' beginnings and then
+// all over the contour.
+func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted int, distants []distant) ([]path, error) {
+	w := f.newFollower(distants)
+	for _, s := range f.recoveryStarts(paths, e) {
+		if inside(paths, e) >= counted {
+			break
+		}
+		if err := ctx.Err(); err != nil {
+			return paths, err
+		}
+		if root, ok := w.deflated(s, paths, e); ok && e.holds(root) {
+			if root, ok = w.polished(root); ok && e.holds(root) {
+				paths = f.adopt(paths, root)
+			}
+		}
+	}
+	return paths, nil
+}
+
+// recoveryStarts lists where lost paths began, then a grid over the contour.
+func (f *Field) recoveryStarts(paths []path, e rectangle) []complex128 {
 	var starts []complex128
 	for i := range paths {
 		if !paths[i].found {
@@ -143,19 +161,24 @@ func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted 
 			starts = append(starts, complex(2*math.Pi*hz, d))
 		}
 	}
-	for _, s := range starts {
-		if inside(paths, e) >= counted {
-			break
-		}
-		if err := ctx.Err(); err != nil {
-			return paths, err
-		}
-		root, ok := w.deflated(s, paths, e)
-		if ok && e.holds(root) {
-			paths = f.adopt(paths, root)
+	return starts
+}
+
+// polished returns the zero of the determinant at a root found with distants,
+// settled with the complete sums.
+func (w *follower) polished(x complex128) (complex128, bool) {
+	distants := w.t.distants
+	w.t.distants = nil
+	defer func() { w.t.distants = distants }()
+	from := x
+	for range 8 {
+		step := 1 / w.logDerivative(x)
+		x -= step
+		if cmplx.Abs(step) < settled*cmplx.Abs(x) {
+			return x, cmplx.Abs(x-from) < 1e-3*cmplx.Abs(x)
 		}
 	}
-	return paths, nil
+	return 0, false
 }
 
 // startOf returns where a lost path began.

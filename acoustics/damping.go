@@ -1,5 +1,11 @@
 package acoustics
 
+import (
+	"runtime"
+	"slices"
+	"sync"
+)
+
 // Damping lists what takes a mode's energy; all decay constants in 1/s.
 type Damping struct {
 	Wall [6]float64
@@ -71,16 +77,60 @@ func (r Room) Modes(upTo float64) []DampedMode {
 		modes  = r.Box.Modes(r.Air.SpeedOfSound, upTo)
 		damped = make([]DampedMode, len(modes))
 		air    = r.Air.relaxation()
+		walls  = r.Walls.distinct()
+		group  sync.WaitGroup
 	)
-	for i, m := range modes {
-		var beta [6]float64
-		for s, l := range r.Walls {
-			beta[s] = l.Admittance(m.Hz)
-		}
-		damped[i] = DampedMode{
-			Mode:    m,
-			Damping: modalDamping(r.Box, m, beta, r.Air.SpeedOfSound, air.attenuation(m.Hz)/decibelsPerNeper),
+	workers := max(1, min(runtime.GOMAXPROCS(0), len(modes)/256))
+	for w := range workers {
+		group.Go(func() {
+			for i := w; i < len(modes); i += workers {
+				m := modes[i]
+				damped[i] = DampedMode{
+					Mode:    m,
+					Damping: modalDamping(r.Box, m, walls.admittances(m.Hz), r.Air.SpeedOfSound, air.attenuation(m.Hz)/decibelsPerNeper),
+				}
+			}
+		})
+	}
+	group.Wait()
+	return damped
+}
+
+// distinctWalls are walls with each finish that occurs on them kept once.
+type distinctWalls struct {
+	finishes []Finish
+	shares   [][6]float64 // [finish][surface]
+}
+
+func (w Walls) distinct() distinctWalls {
+	var d distinctWalls
+	for s, lining := range w {
+		for _, f := range lining {
+			d.add(s, f)
 		}
 	}
-	return damped
+	return d
+}
+
+// add adds a finish's share of a surface.
+func (d *distinctWalls) add(s int, f FinishShare) {
+	at := slices.IndexFunc(d.finishes, func(g Finish) bool { return slices.Equal(g.Absorption, f.Finish.Absorption) })
+	if at < 0 {
+		at = len(d.finishes)
+		d.finishes = append(d.finishes, f.Finish)
+		d.shares = append(d.shares, [6]float64{})
+	}
+	d.shares[at][s] += f.Share
+}
+
+// admittances returns those of the six surfaces at a frequency in Hz.
+func (d distinctWalls) admittances(hz float64) [6]float64 {
+	var beta [6]float64
+	for i, f := range d.finishes {
+		b := f.Admittance(hz)
+		for s, share := range d.shares[i] {
+			beta[s] += share * b
+		}
+	}
+	return beta
 }

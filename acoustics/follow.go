@@ -14,9 +14,11 @@ type follower struct {
 	rhs []complex128
 }
 
-func (f *Field) newFollower() *follower {
+func (f *Field) newFollower(distants []distant) *follower {
 	r := len(f.units)
-	return &follower{f: f, t: f.newTransfer(), lu: newLU(r), rhs: make([]complex128, r)}
+	w := &follower{f: f, t: f.newTransfer(), lu: newLU(r), rhs: make([]complex128, r)}
+	w.t.distants = distants
+	return w
 }
 
 // alone is the static air mass before a unit, S_1 of its own pair, in 1/m.
@@ -89,84 +91,127 @@ const (
 	leastStep = 1e-6 // below this a path is given up; the count will miss it
 	// trust is how far a corrected root may lie from the predicted one, as a
 	// share of the step the root took.
-	trust = 0.35
-	// settled is the relative change at which a root is taken as found.
-	settled = 1e-12
+	trust = 0.1
+	// settled is the relative change at which a root is taken as found, onTheWay
+	// that at which a path goes on.
+	settled, onTheWay = 1e-11, 1e-7
 )
 
 // follow carries a path from s = 0 to s = 1 by prediction and correction, with
 // steps that shrink where the prediction is poor, as it is where two paths come
-// near one another.
+// near one another. At the end the root is settled with the complete sums.
 func (w *follower) follow(ctx context.Context, a *path) {
 	f := w.f
 	if a.mode >= 0 && !f.touched(a.mode) {
 		a.root, a.found = f.bareRoot(a.mode), true
 		return
 	}
-	var root complex128
+	start := complex(2*math.Pi, 0)
 	if a.mode >= 0 {
-		root = f.bareRoot(a.mode)
+		start = f.bareRoot(a.mode)
 	} else {
-		root = complex(2*math.Pi*f.units[a.unit].Natural, 0)
+		start *= complex(f.units[a.unit].Natural, 0)
 	}
-	root, ok := w.correct(a, root, 0)
+	var slope complex128 // of the secular function, as last seen
+	root, ok := w.correct(a, start, 0, &slope, onTheWay)
 	if !ok {
 		return
 	}
 	var (
-		s, step  = 0.0, firstStep
-		velocity complex128 // d root/d s, of the last step
-		first    = true
+		s, step = 0.0, firstStep
+		trail   = trail{{0, root}}
 	)
 	for s < 1 {
 		if ctx.Err() != nil || step < leastStep {
 			return
 		}
 		to := math.Min(1, s+step)
-		guess := root + velocity*complex(to-s, 0)
-		next, ok := w.correct(a, guess, to)
-		// The tolerance has a floor: a root that hardly moves is always believed.
-		moved := cmplx.Abs(next-root) + 1e-5*cmplx.Abs(root)
-		if !ok || (!first && cmplx.Abs(next-guess) > trust*moved) || cmplx.Abs(next-root) > 0.03*cmplx.Abs(root) {
-			if first && ok && cmplx.Abs(next-root) <= 1e-3*cmplx.Abs(root) {
-				// accepted below: the first step has no prediction
-			} else {
-				step /= 2
-				continue
-			}
+		guess := trail.at(to)
+		kept := slope
+		next, ok := w.correct(a, guess, to, &slope, onTheWay)
+		if !ok || !believed(root, guess, next, len(trail) == 1) {
+			step /= 2
+			slope = kept
+			continue
 		}
-		velocity = (next - root) / complex(to-s, 0)
-		root, s, first = next, to, false
-		step = math.Min(step*2, 0.25)
+		root, s = next, to
+		trail = append(trail, waypoint{to, next})
+		step = math.Min(step*2, 0.34)
 	}
-	a.root, a.found = root, real(root) > 0
+	a.root, a.found = w.settle(a, root, slope)
 }
 
-// correct finds the zero near a guess by the secant method.
-func (w *follower) correct(a *path, guess complex128, s float64) (complex128, bool) {
-	var (
-		x0 = guess
-		x1 = guess * complex(1+1e-6, 1e-6)
-		f0 = w.secular(a, x0, s)
-		f1 = w.secular(a, x1, s)
-	)
+// waypoint is a place that a path has come by.
+type waypoint struct {
+	s    float64
+	root complex128
+}
+
+// trail is a path's way so far.
+type trail []waypoint
+
+// at returns where the path is expected at s: the polynomial through the last
+// three places, by Neville's scheme.
+func (t trail) at(s float64) complex128 {
+	last := t[max(0, len(t)-3):]
+	var value [3]complex128
+	for i, p := range last {
+		value[i] = p.root
+	}
+	for gap := 1; gap < len(last); gap++ {
+		for i := range len(last) - gap {
+			a, b := last[i].s, last[i+gap].s
+			value[i] = (complex(s-b, 0)*value[i] - complex(s-a, 0)*value[i+1]) / complex(a-b, 0)
+		}
+	}
+	return value[0]
+}
+
+// believed reports whether a step from root to next is short and near enough to
+// what was predicted. The tolerance has a floor: a root that hardly moves is
+// always believed; the first step has no prediction and must be short.
+func believed(root, guess, next complex128, first bool) bool {
+	moved := cmplx.Abs(next - root)
+	if first {
+		return moved <= 1e-3*cmplx.Abs(root)
+	}
+	return moved <= 0.03*cmplx.Abs(root) && cmplx.Abs(next-guess) <= trust*(moved+1e-5*cmplx.Abs(root))
+}
+
+// settle finds the root of a path with the complete sums from where the path
+// has led.
+func (w *follower) settle(a *path, root, slope complex128) (complex128, bool) {
+	distants := w.t.distants
+	w.t.distants = nil
+	defer func() { w.t.distants = distants }()
+	end, ok := w.correct(a, root, 1, &slope, settled)
+	return end, ok && real(end) > 0 && cmplx.Abs(end-root) < 1e-3*cmplx.Abs(root)
+}
+
+// correct finds the zero near a guess by the secant method, the first step by
+// the slope of the secular function there, where it is known. It leaves the
+// slope it has seen last.
+func (w *follower) correct(a *path, guess complex128, s float64, slope *complex128, tolerance float64) (complex128, bool) {
+	x0 := guess
+	f0 := w.secular(a, x0, s)
+	if *slope == 0 {
+		h := x0 * complex(1e-6, 1e-6)
+		*slope = (w.secular(a, x0+h, s) - f0) / h
+	}
 	for range 12 {
+		x1 := x0 - f0 / *slope
+		if cmplx.IsNaN(x1) || cmplx.Abs(x1-guess) > 0.3*cmplx.Abs(guess) {
+			return 0, false
+		}
+		if cmplx.Abs(x1-x0) < tolerance*cmplx.Abs(x1) {
+			return x1, true
+		}
+		f1 := w.secular(a, x1, s)
 		if f1 == f0 {
 			return x1, f1 == 0
 		}
-		x2 := x1 - f1*(x1-x0)/(f1-f0)
-		if cmplx.IsNaN(x2) || cmplx.Abs(x2-guess) > 0.3*cmplx.Abs(guess) {
-			return 0, false
-		}
+		*slope = (f1 - f0) / (x1 - x0)
 		x0, f0 = x1, f1
-		x1 = x2
-		if cmplx.Abs(x1-x0) < settled*cmplx.Abs(x1) {
-			return x1, true
-		}
-		f1 = w.secular(a, x1, s)
-		if cmplx.Abs(x1-x0) < 1e-9*cmplx.Abs(x1) {
-			return x1, true
-		}
 	}
 	return 0, false
 }

@@ -66,18 +66,22 @@ type path struct {
 // Newton's method with the known zeros divided out. progress, where not nil, is
 // told how many of how many paths are done. It returns the error of ctx.
 func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, total int)) (Poles, error) {
+	distants, err := f.newDistants(ctx, 1.3*upTo)
+	if err != nil {
+		return Poles{}, err
+	}
 	paths := f.starts(upTo)
-	if err := f.followAll(ctx, paths, progress); err != nil {
+	if err := f.followAll(ctx, paths, distants, progress); err != nil {
 		return Poles{}, err
 	}
 	dropTwins(paths)
 	edge := f.contour(upTo, paths)
-	counted, err := f.count(ctx, edge)
+	counted, err := f.count(ctx, edge, distants)
 	if err != nil {
 		return Poles{}, err
 	}
 	if inside(paths, edge) < counted {
-		if paths, err = f.recover(ctx, paths, edge, counted); err != nil {
+		if paths, err = f.recover(ctx, paths, edge, counted, distants); err != nil {
 			return Poles{}, err
 		}
 	}
@@ -102,7 +106,7 @@ func (f *Field) starts(upTo float64) []path {
 }
 
 // followAll follows every path, each worker with room of its own.
-func (f *Field) followAll(ctx context.Context, paths []path, progress func(done, total int)) error {
+func (f *Field) followAll(ctx context.Context, paths []path, distants []distant, progress func(done, total int)) error {
 	var (
 		group sync.WaitGroup
 		next  = make(chan int)
@@ -111,7 +115,7 @@ func (f *Field) followAll(ctx context.Context, paths []path, progress func(done,
 	)
 	for range runtime.GOMAXPROCS(0) {
 		group.Go(func() {
-			w := f.newFollower()
+			w := f.newFollower(distants)
 			for i := range next {
 				w.follow(ctx, &paths[i])
 				if progress != nil {
@@ -174,24 +178,18 @@ func dropTwins(paths []path) {
 // listed turns paths into poles with their levels.
 func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rectangle, counted int) (Poles, error) {
 	p := Poles{Counted: counted, Found: inside(paths, edge)}
-	var roots []complex128
-	for _, a := range paths {
-		if a.found {
-			roots = append(roots, a.root)
-		}
-	}
 	shown := make([]*Pole, len(paths))
 	var group sync.WaitGroup
 	workers := runtime.GOMAXPROCS(0)
 	for w := range workers {
 		group.Go(func() {
-			s := f.newScene()
+			r := f.newFollower(nil)
 			for i := w; i < len(paths) && ctx.Err() == nil; i += workers {
 				a := paths[i]
-				if a.found && imag(a.root) <= 3*math.Ln10/shortestT60 && imag(a.root) > 0 {
+				if a.found && imag(a.root) <= tallest && imag(a.root) > 0 {
 					shown[i] = &Pole{
 						Oscillator: Oscillator{Natural: cmplx.Abs(a.root) / (2 * math.Pi), Decay: imag(a.root)},
-						LevelDB:    s.residueLevels(a.root, roots),
+						LevelDB:    r.residueLevels(&a),
 					}
 				}
 			}
@@ -217,42 +215,4 @@ func sortPoles(p []AbsorberPole) {
 			p[j], p[j-1] = p[j-1], p[j]
 		}
 	}
-}
-
-// circlePoints is how many points the residue's contour has: the trapezoidal
-// rule on a circle of a third of the way to the next pole leaves 3^-16.
-const circlePoints = 16
-
-// residueLevels returns the level of a pole's own peak at each seat, its
-// residue by Cauchy's integral on a circle round it that holds no other pole.
-func (s *scene) residueLevels(root complex128, roots []complex128) []float64 {
-	f := s.t.f
-	radius := 0.2 * cmplx.Abs(root)
-	for _, r := range roots {
-		if d := cmplx.Abs(r - root); d > 0 {
-			radius = math.Min(radius, d/3)
-		}
-	}
-	var (
-		level   = make([]float64, len(f.seats))
-		residue = make([]complex128, len(f.seats))
-		whole   = make([]float64, len(f.seats))
-	)
-	for i := range circlePoints {
-		turn := cmplx.Rect(1, 2*math.Pi*(float64(i)+0.5)/circlePoints)
-		s.at(root + complex(radius, 0)*turn)
-		for e, p := range s.treated {
-			residue[e] += p * turn * complex(radius/circlePoints, 0)
-			whole[e] = math.Max(whole[e], cmplx.Abs(p)*radius)
-		}
-	}
-	for e := range level {
-		// Rounding leaves this much of what the circle's points add up to.
-		if cmplx.Abs(residue[e]) < 1e-9*whole[e] {
-			level[e] = math.NaN()
-			continue
-		}
-		level[e] = 20 * math.Log10(4*math.Pi*cmplx.Abs(residue[e])/imag(root))
-	}
-	return level
 }

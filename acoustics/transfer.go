@@ -18,6 +18,9 @@ type transfer struct {
 	kappa2 complex128
 	base   complex128   // the uniform mode, common to all pairs
 	gamma  []complex128 // in the order of Field.sums
+
+	distants []distant // nil: the complete sums everywhere
+	powers   [distantTerms]complex128
 }
 
 func (f *Field) newTransfer() *transfer {
@@ -27,18 +30,15 @@ func (f *Field) newTransfer() *transfer {
 }
 
 // at evaluates the responses at the complex angular frequency omega, leaving
-// out the own term of mode except (−1: none), whose static parts stay.
+// out the own term of mode except (−1: none), whose static parts stay. Where
+// the transfer has distants, they are used.
 func (t *transfer) at(omega complex128, except int) {
-	var (
-		f = t.f
-		m = &f.modes
-		c = complex(f.room.Air.SpeedOfSound, 0)
-		k = omega / c
-	)
-	t.omega = omega
-	t.n = f.reach(cmplx.Abs(omega) / (2 * math.Pi))
-	t.kappa2 = k*k - 2i*k*complex(m.tail[t.n], 0)
-	t.base = 1 / (complex(f.room.Box.Volume(), 0) * (-k*k + 2i*k*complex(m.uniform, 0)))
+	t.begin(omega, t.f.reach(cmplx.Abs(omega)/(2*math.Pi)))
+	if d := distantFor(t.distants, omega); d != nil && except < d.near {
+		t.nearby(d, except)
+		return
+	}
+	k := omega / complex(t.f.room.Air.SpeedOfSound, 0)
 	if imag(omega) == 0 {
 		t.realFactors(real(k))
 	} else {
@@ -49,6 +49,63 @@ func (t *transfer) at(omega complex128, except int) {
 		t.re[except], t.im[except] = real(h), imag(h)
 	}
 	t.sum()
+}
+
+// begin sets what all pairs share at omega, n modes being summed one by one.
+func (t *transfer) begin(omega complex128, n int) {
+	var (
+		f = t.f
+		m = &f.modes
+		k = omega / complex(f.room.Air.SpeedOfSound, 0)
+	)
+	t.omega = omega
+	t.n = n
+	t.kappa2 = k*k - 2i*k*complex(m.tail[t.n], 0)
+	t.base = 1 / (complex(f.room.Box.Volume(), 0) * (-k*k + 2i*k*complex(m.uniform, 0)))
+}
+
+// complete evaluates the responses from the first n modes one by one and the
+// static sums, without the own terms of the modes below index near, whose static
+// parts stay.
+func (t *transfer) complete(omega complex128, near, n int) {
+	t.begin(omega, n)
+	t.factors(omega / complex(t.f.room.Air.SpeedOfSound, 0))
+	for i := range near {
+		h := t.staticPart(i)
+		t.re[i], t.im[i] = real(h), imag(h)
+	}
+	t.sum()
+}
+
+// nearby evaluates the responses from the near modes one by one and the rest by
+// the polynomial.
+func (t *transfer) nearby(d *distant, except int) {
+	var (
+		m = &t.f.modes
+		k = t.omega / complex(t.f.room.Air.SpeedOfSound, 0)
+		n = d.near
+	)
+	var (
+		kk = real(k)*real(k) - imag(k)*imag(k)
+		ki = 2 * real(k) * imag(k)
+	)
+	for i := range n {
+		// 1/(k_n² − k² + 2jkδ_n/c), written out
+		var (
+			l    = 2 * m.loss[i]
+			re   = m.k2[i] - kk - l*imag(k)
+			im   = l*real(k) - ki
+			over = m.share[i] / (re*re + im*im)
+		)
+		t.re[i], t.im[i] = re*over, -im*over
+	}
+	if except >= 0 && except < n {
+		t.re[except], t.im[except] = 0, 0
+	}
+	d.powers(t.omega, t.powers[:])
+	t.eachSum(n, func(at int, sum complex128) {
+		t.gamma[at] = t.base + d.at(at, t.powers[:]) + sum
+	})
 }
 
 // staticPart returns what stands of a mode's factor without its own term.
@@ -92,7 +149,14 @@ func (t *transfer) realFactors(k float64) {
 
 // sum adds up the responses of all pairs.
 func (t *transfer) sum() {
-	f, n := t.f, t.n
+	t.eachSum(t.n, func(at int, sum complex128) {
+		t.gamma[at] = t.base + t.f.sums[at].at(t.kappa2) + sum
+	})
+}
+
+// eachSum adds up the factors of the first n modes over every pair.
+func (t *transfer) eachSum(n int, visit func(at int, sum complex128)) {
+	f := t.f
 	last := -1
 	f.eachPair(func(p, q, at int) {
 		if p != last {
@@ -101,8 +165,7 @@ func (t *transfer) sum() {
 			last = p
 		}
 		w := f.weights[q][:n]
-		t.gamma[at] = t.base + f.sums[at].at(t.kappa2) +
-			complex(floats.Dot(t.tr[:n], w), floats.Dot(t.ti[:n], w))
+		visit(at, complex(floats.Dot(t.tr[:n], w), floats.Dot(t.ti[:n], w)))
 	})
 }
 

@@ -46,7 +46,13 @@ type controller struct {
 	outer, inner, lower *container.Split
 	started             time.Time
 	frames              int
+	edited              time.Time     // when the project was last submitted
+	lag                 time.Duration // from an edit to its levels, last seen
 }
+
+// slowStudy is the lag from which a drag shows the drawing without waiting for
+// the results that belong to it.
+const slowStudy = 60 * time.Millisecond
 
 // newController makes the window's content; do puts functions on the UI
 // goroutine.
@@ -135,11 +141,14 @@ func (c *controller) forget() { c.recovery.drop() }
 func (c *controller) changed() {
 	c.state.Project = c.history.Current()
 	c.trimSelection()
+	c.edited = time.Now()
 	c.runner.submit(c.state.Project)
 	if c.state.Dragging {
-		// What hangs on the result follows with the result.
-		c.drawing.show(c.state)
+		// The rest follows with the result, so that the window is painted once.
 		c.details.show(c.state)
+		if c.lag > slowStudy {
+			c.drawing.show(c.state)
+		}
 		return
 	}
 	c.title()
@@ -175,7 +184,9 @@ func (c *controller) result(r *study.Result, err error) {
 		c.state.Selection.Mode = sameMode(old, r, m)
 	}
 	c.frames++
+	c.lag = time.Since(c.edited)
 	if c.state.Dragging {
+		c.drawing.show(c.state)
 		c.lanes.show(c.state)
 		c.showFinding()
 		if c.frames%4 == 0 {

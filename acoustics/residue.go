@@ -1,0 +1,142 @@
+package acoustics
+
+import (
+	"math"
+	"math/cmplx"
+)
+
+// residueStep is the relative step of ω for derivatives at a root: far below
+// the distance of any two roots that are told apart.
+const residueStep = 1e-7
+
+// residueLevels returns the level in dB of a pole's own peak at each seat,
+//
+//	20 log10(4π·|residue|/Im ω)
+//
+// NaN where it is nothing there.
+func (w *follower) residueLevels(a *path) []float64 {
+	if a.mode >= 0 {
+		return w.modeResidues(a)
+	}
+	return w.unitResidues(a)
+}
+
+// modeResidues are those of a pole that a mode has become. With the mode's own
+// term set apart, the treated room's response between two ports is
+//
+//	T′ + φ_r·φ_s/(VΛ·F(ω)), φ = ψ − jωρ·G′·(Z + jωρG′)^-1·û
+//
+// with F the secular function and φ the mode's shape with the units in it, so
+// that the residue is φ_r·φ_s/(VΛ·F′).
+func (w *follower) modeResidues(a *path) []float64 {
+	f := w.f
+	var (
+		h     = a.root * residueStep
+		slope complex128
+	)
+	if f.touched(a.mode) {
+		slope = (w.secular(a, a.root+h, 1) - w.secular(a, a.root-h, 1)) / (2 * h)
+	} else {
+		c := complex(f.room.Air.SpeedOfSound, 0)
+		slope = -2*a.root/(c*c) + 2i*complex(f.modes.loss[a.mode], 0)/c
+	}
+	w.secular(a, a.root, 1) // leaves (Z + jωρG′)^-1·û in rhs
+	var (
+		r    = len(f.units)
+		jwr  = 1i * a.root * complex(f.room.Air.Density, 0)
+		wave = func(port int) complex128 {
+			v := complex(f.weights[r+port][a.mode], 0)
+			for q, u := range w.rhs {
+				v -= jwr * w.t.toUnit(port, q) * u
+			}
+			return v
+		}
+		drive, whole = w.driven(wave)
+	)
+	levels := make([]float64, len(f.seats))
+	for e := range levels {
+		v := wave(len(f.sources)+e) * drive
+		levels[e] = w.level(v*complex(f.modes.share[a.mode], 0)/slope, a.root, cmplx.Abs(v) <= nothing*whole)
+	}
+	return levels
+}
+
+// unitResidues are those of a pole that a unit's resonance has become, from the
+// null vector x of the matrix A = Z + jωρG, which is symmetric: the residue is
+//
+//	−jωρ·(G_r·x)·(x·G_s)/(x·A′·x)
+func (w *follower) unitResidues(a *path) []float64 {
+	f := w.f
+	r := len(f.units)
+	h := a.root * residueStep
+	w.matrix(a.root+h, 1, -1)
+	slope := append([]complex128(nil), w.lu.a...)
+	w.matrix(a.root-h, 1, -1)
+	for i, v := range w.lu.a {
+		slope[i] = (slope[i] - v) / (2 * h)
+	}
+	w.matrix(a.root, 1, -1)
+	w.lu.factor()
+	x := w.rhs
+	for u := range x {
+		x[u] = 0
+	}
+	x[a.unit] = 1
+	for range 2 { // inverse iteration at the root
+		w.lu.solve(x)
+		var most float64
+		for _, v := range x {
+			most = math.Max(most, cmplx.Abs(v))
+		}
+		for u := range x {
+			x[u] /= complex(most, 0)
+		}
+	}
+	var norm complex128
+	for p := range r {
+		for q := range r {
+			norm += x[p] * slope[p*r+q] * x[q]
+		}
+	}
+	var (
+		jwr  = 1i * a.root * complex(f.room.Air.Density, 0)
+		wave = func(port int) complex128 {
+			var v complex128
+			for q, u := range x {
+				v += w.t.toUnit(port, q) * u
+			}
+			return v
+		}
+		drive, whole = w.driven(wave)
+	)
+	levels := make([]float64, len(f.seats))
+	for e := range levels {
+		v := wave(len(f.sources)+e) * drive
+		levels[e] = w.level(-jwr*v/norm, a.root, cmplx.Abs(v) <= nothing*whole)
+	}
+	return levels
+}
+
+// driven returns a wave's value at the sources, each with its amplitude, added
+// up, and the product of the greatest values that it and a seat's could have.
+func (w *follower) driven(wave func(port int) complex128) (sum complex128, whole float64) {
+	var most, gains float64
+	for q, s := range w.f.sources {
+		v := wave(q)
+		sum += w.t.drive(q) * v
+		gains += math.Abs(s.Gain)
+		most = math.Max(most, cmplx.Abs(v))
+	}
+	for e := range w.f.seats {
+		most = math.Max(most, cmplx.Abs(wave(len(w.f.sources)+e)))
+	}
+	return sum, gains * most * most
+}
+
+// level returns the level of a residue at a root, NaN where it is nothing.
+func (w *follower) level(residue, root complex128, none bool) float64 {
+	if none {
+		return math.NaN()
+	}
+	return 20 * math.Log10(4*math.Pi*cmplx.Abs(residue)/imag(root))
+}
