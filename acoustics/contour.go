@@ -140,9 +140,7 @@ func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted 
 			return paths, err
 		}
 		if root, ok := w.deflated(s, paths, e); ok && e.holds(root) {
-			if root, ok = w.polished(root); ok && e.holds(root) {
-				paths = f.adopt(paths, root)
-			}
+			paths = f.adopt(paths, root)
 		}
 	}
 	return paths, nil
@@ -162,23 +160,6 @@ func (f *Field) recoveryStarts(paths []path, e rectangle) []complex128 {
 		}
 	}
 	return starts
-}
-
-// polished returns the zero of the determinant at a root found with distants,
-// settled with the complete sums.
-func (w *follower) polished(x complex128) (complex128, bool) {
-	distants := w.t.distants
-	w.t.distants = nil
-	defer func() { w.t.distants = distants }()
-	from := x
-	for range 8 {
-		step := 1 / w.logDerivative(x)
-		x -= step
-		if cmplx.Abs(step) < settled*cmplx.Abs(x) {
-			return x, cmplx.Abs(x-from) < 1e-3*cmplx.Abs(x)
-		}
-	}
-	return 0, false
 }
 
 // startOf returns where a lost path began.

@@ -3,14 +3,15 @@ package acoustics
 import (
 	"context"
 	"math"
+	"runtime"
 	"sort"
+	"sync"
 )
 
 // distant is what the modes well above a stretch of frequency, and the static
 // sums, add to the responses on that stretch: smooth there, and therefore
-// taken as an interpolating polynomial in ω. It serves where many evaluations
-// near the stretch are wanted and six figures will do; what is found with it is
-// settled with the complete sum.
+// taken as an interpolating polynomial in ω, good to six figures of the unit's
+// own response at least. It serves where very many evaluations are wanted.
 type distant struct {
 	low, high float64      // the stretch in Re ω, rad/s
 	near      int          // modes below this index are summed one by one
@@ -39,20 +40,24 @@ const tallest = 3 * math.Ln10 / shortestT60
 // newDistants covers Re ω from 0 up to a frequency in Hz.
 func (f *Field) newDistants(ctx context.Context, upTo float64) ([]distant, error) {
 	var (
-		all   []distant
-		t     = f.newTransfer()
-		count = math.Ceil(2 * math.Pi * upTo / stretchWidth)
-		width = 2 * math.Pi * upTo / count
+		count = int(math.Ceil(2 * math.Pi * upTo / stretchWidth))
+		width = 2 * math.Pi * upTo / float64(count)
+		all   = make([]distant, count)
+		group sync.WaitGroup
 	)
-	for i := range int(count) {
-		if err := ctx.Err(); err != nil {
-			return nil, err
-		}
-		d := distant{low: float64(i) * width, high: float64(i+1) * width}
-		f.fitDistant(&d, t)
-		all = append(all, d)
+	workers := min(runtime.GOMAXPROCS(0), count)
+	for w := range workers {
+		group.Go(func() {
+			t := f.newTransfer()
+			// The highest stretches, which are dear, first.
+			for i := count - 1 - w; i >= 0 && ctx.Err() == nil; i -= workers {
+				all[i] = distant{low: float64(i) * width, high: float64(i+1) * width}
+				f.fitDistant(&all[i], t)
+			}
+		})
 	}
-	return all, nil
+	group.Wait()
+	return all, ctx.Err()
 }
 
 // fitDistant works the polynomial out from the complete sums at its points.

@@ -99,7 +99,7 @@ const (
 
 // follow carries a path from s = 0 to s = 1 by prediction and correction, with
 // steps that shrink where the prediction is poor, as it is where two paths come
-// near one another. At the end the root is settled with the complete sums.
+// near one another.
 func (w *follower) follow(ctx context.Context, a *path) {
 	f := w.f
 	if a.mode >= 0 && !f.touched(a.mode) {
@@ -138,7 +138,8 @@ func (w *follower) follow(ctx context.Context, a *path) {
 		trail = append(trail, waypoint{to, next})
 		step = math.Min(step*2, 0.34)
 	}
-	a.root, a.found = w.settle(a, root, slope)
+	end, ok := w.correct(a, root, 1, &slope, settled)
+	a.root, a.found = end, ok && real(end) > 0
 }
 
 // waypoint is a place that a path has come by.
@@ -176,16 +177,6 @@ func believed(root, guess, next complex128, first bool) bool {
 		return moved <= 1e-3*cmplx.Abs(root)
 	}
 	return moved <= 0.03*cmplx.Abs(root) && cmplx.Abs(next-guess) <= trust*(moved+1e-5*cmplx.Abs(root))
-}
-
-// settle finds the root of a path with the complete sums from where the path
-// has led.
-func (w *follower) settle(a *path, root, slope complex128) (complex128, bool) {
-	distants := w.t.distants
-	w.t.distants = nil
-	defer func() { w.t.distants = distants }()
-	end, ok := w.correct(a, root, 1, &slope, settled)
-	return end, ok && real(end) > 0 && cmplx.Abs(end-root) < 1e-3*cmplx.Abs(root)
 }
 
 // correct finds the zero near a guess by the secant method, the first step by

@@ -85,7 +85,7 @@ func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, tot
 			return Poles{}, err
 		}
 	}
-	return f.listed(ctx, paths, upTo, edge, counted)
+	return f.listed(ctx, paths, upTo, edge, counted, distants)
 }
 
 // starts lists the modes and units that are followed.
@@ -176,14 +176,14 @@ func dropTwins(paths []path) {
 }
 
 // listed turns paths into poles with their levels.
-func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rectangle, counted int) (Poles, error) {
+func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rectangle, counted int, distants []distant) (Poles, error) {
 	p := Poles{Counted: counted, Found: inside(paths, edge)}
 	shown := make([]*Pole, len(paths))
 	var group sync.WaitGroup
 	workers := runtime.GOMAXPROCS(0)
 	for w := range workers {
 		group.Go(func() {
-			r := f.newFollower(nil)
+			r := f.newFollower(distants)
 			for i := w; i < len(paths) && ctx.Err() == nil; i += workers {
 				a := paths[i]
 				if a.found && imag(a.root) <= tallest && imag(a.root) > 0 {

@@ -3,6 +3,7 @@ package window
 import (
 	"context"
 	"sync"
+	"time"
 
 	"stillroom/app/project"
 	"stillroom/app/study"
@@ -10,8 +11,9 @@ import (
 
 // runner studies projects in the background. The latest edit wins: a run that an
 // edit has overtaken is let come as far as the levels, so that the window
-// follows a drag, and then gives way. Its own goroutine takes up the next
-// project at once; only results go through do to the UI goroutine.
+// follows a drag, and then gives way. Where whole runs are quick, they are let
+// come to their end and only complete results are shown. Its own goroutine takes
+// up the next project at once; only results go through do to the UI goroutine.
 type runner struct {
 	do      func(func())
 	options study.Options
@@ -26,7 +28,12 @@ type runner struct {
 	running bool
 	levels  bool // the run has come as far as the levels
 	cancel  context.CancelFunc
+
+	last time.Duration // of the last complete run; the worker's own
 }
+
+// quick is how long a run may take and still let a drag follow whole.
+const quick = 60 * time.Millisecond
 
 // submit asks for a project to be studied.
 func (r *runner) submit(p project.Project) {
@@ -87,8 +94,13 @@ func (r *runner) work() {
 
 // run studies one project and returns the furthest result it has.
 func (r *runner) run(ctx context.Context, p project.Project, former *study.Result) *study.Result {
+	start := time.Now()
+	whole := former != nil && r.last > 0 && r.last < quick
 	result, err := study.Run(ctx, p, r.options, former, func(partial *study.Result) {
 		former = partial
+		if whole {
+			return
+		}
 		r.do(func() { r.show(partial, nil) })
 		r.mutex.Lock()
 		defer r.mutex.Unlock()
@@ -99,6 +111,7 @@ func (r *runner) run(ctx context.Context, p project.Project, former *study.Resul
 	})
 	switch {
 	case err == nil:
+		r.last = time.Since(start)
 		r.do(func() { r.show(result, nil) })
 		return result
 	case ctx.Err() == nil:
