@@ -9,10 +9,10 @@ import (
 // impedance can have, and the impedance that has it: where dα/dζ = 0.
 // Kuttruff, Room Acoustics, gives 0.951 at 1.567.
 const (
-	greatestDiffuse  = 0.951222381632337
-	greatestAtZeta   = 1.566923655
+	greatestDiffuse  = 0.951222013844418
+	greatestAtZeta   = 1.566924169034845
 	greatestAtBeta   = 1 / greatestAtZeta
-	curvatureAtGreat = 6.4 // |d²α/dβ²| there, for a starting value only
+	curvatureAtGreat = 1.03162006 // |d²α/dβ²| there, for a starting value
 )
 
 // DiffuseFromImpedance returns the random-incidence absorption coefficient of
