@@ -3,7 +3,6 @@ package acoustics
 import (
 	"context"
 	"math"
-	"math/cmplx"
 	"testing"
 )
 
@@ -94,8 +93,4 @@ func logSpaced(lo, hi float64, n int) []float64 {
 // near reports whether two numbers agree within a relative tolerance.
 func near(a, b, tolerance float64) bool {
 	return math.Abs(a-b) <= tolerance*math.Max(math.Abs(a), math.Abs(b))
-}
-
-func nearC(a, b complex128, tolerance float64) bool {
-	return cmplx.Abs(a-b) <= tolerance*math.Max(cmplx.Abs(a), cmplx.Abs(b))
 }
