@@ -103,10 +103,17 @@ func extendedDiffuse(l layered, omega complex128, limit, tol float64, air acoust
 	m := mean(u0, 1, panels, tol, func(u float64) sample {
 		z := (front + 1/layers.admittance(k*k*(1-u*u), true)) * complex(over*u, 0)
 		r, x := max(real(z), 0), imag(z)
-		return sample{
+		s := sample{
 			value:    [2]float64{8 * r * u / (sq(r+1) + x*x)},
 			detuning: x / (1 + r),
 		}
+		if l.cavity().empty() {
+			s.halfWaves = k * u * l.cavity().depth() / math.Pi
+			// Over u, and with the integrand's 2u, in place of ln f.
+			s.area, s.halfWidth = modeResonance(front*complex(over*u, 0), k*l.cavity().depth())
+			s.area *= 2 * u
+		}
+		return s
 	})
 	return m[0] / (1 + u0)
 }

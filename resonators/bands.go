@@ -59,8 +59,15 @@ func bandMean(a Absorber, air acoustics.Air, limit, lo, hi float64) [2]float64 {
 		panels += int(2 * (hi - lo) * l.cavity().depth() / air.SpeedOfSound)
 	}
 	m := mean(from, to, panels, bandTolerance, func(x float64) sample {
-		z := a.Specific(complex(2*math.Pi*math.Exp(x), 0), air)
+		hz := math.Exp(x)
+		z := a.Specific(complex(2*math.Pi*hz, 0), air)
 		s := sample{detuning: imag(z) / (1 + real(z))}
+		if isLayered && l.cavity().empty() {
+			kd := 2 * math.Pi * hz * l.cavity().depth() / air.SpeedOfSound
+			face := l.front(complex(2*math.Pi*hz, 0), air) / complex(air.Density*air.SpeedOfSound, 0)
+			s.halfWaves = kd / math.Pi
+			s.area, s.halfWidth = modeResonance(face, kd)
+		}
 		s.value[0] = normalOf(z)
 		if local {
 			s.value[1] = localDiffuse(z, limit)
@@ -75,4 +82,15 @@ func bandMean(a Absorber, air acoustics.Air, limit, lo, hi float64) [2]float64 {
 		})[0]
 	}
 	return m
+}
+
+// modeResonance returns the area under the absorption curve and the half width,
+// both over ln f, of the resonance that a face of specific impedance z = r + jX
+// has just above a mode of an empty cavity, where the wave number times the depth
+// is kd: there the cavity's −cot runs through −X within (1+r)/(X²+1) of kd, and
+// the peak is 4r/(1+r)².
+func modeResonance(face complex128, kd float64) (area, halfWidth float64) {
+	r, x := real(face), imag(face)
+	halfWidth = (1 + r) / ((1 + x*x) * kd)
+	return math.Pi * 4 * r / sq(1+r) * halfWidth, halfWidth
 }

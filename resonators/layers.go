@@ -55,6 +55,16 @@ func (c cavity) depth() float64 {
 	return d
 }
 
+// empty reports whether nothing but air is in the cavity.
+func (c cavity) empty() bool {
+	for _, l := range c.layers[:c.n] {
+		if l.flow > 0 {
+			return false
+		}
+	}
+	return true
+}
+
 // slab is a layer at one frequency.
 type slab struct {
 	medium

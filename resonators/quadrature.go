@@ -8,6 +8,10 @@ import "math"
 type sample struct {
 	value    [2]float64
 	detuning float64
+	// halfWaves is how many fit an empty cavity's depth; area and halfWidth are
+	// those of the resonance that a heavy face has just above each of the cavity's
+	// own modes. All are 0 where the cavity is filled, which damps its modes.
+	halfWaves, area, halfWidth float64
 }
 
 // Nodes and weights of the 15-point Kronrod rule on −1…1 and of the 7-point
@@ -52,12 +56,12 @@ func mean(lo, hi float64, panels int, tol float64, f func(x float64) sample) [2]
 	var (
 		in    = integrator{f: f, whole: hi - lo, tolerance: tol}
 		width = (hi - lo) / float64(panels)
-		left  = f(lo).detuning
+		left  = f(lo)
 		sum   [2]float64
 	)
 	for i := range panels {
 		a := lo + float64(i)*width
-		right := f(a + width).detuning
+		right := f(a + width)
 		p := in.panel(a, a+width, left, right, 0)
 		sum[0] += p[0]
 		sum[1] += p[1]
@@ -66,14 +70,14 @@ func mean(lo, hi float64, panels int, tol float64, f func(x float64) sample) [2]
 	return [2]float64{sum[0] / in.whole, sum[1] / in.whole}
 }
 
-// panel returns the integrals over lo…hi; left and right are the detunings at
+// panel returns the integrals over lo…hi; left and right are the samples at
 // its ends.
-func (in integrator) panel(lo, hi, left, right float64, depth int) [2]float64 {
+func (in integrator) panel(lo, hi float64, left, right sample, depth int) [2]float64 {
 	var (
 		kronrod, gauss [2]float64
 		mid, half      = 0.5 * (lo + hi), 0.5 * (hi - lo)
 		before, at     = left, lo
-		centre         float64
+		centre         sample
 		skipped        bool
 	)
 	for i := range 15 {
@@ -89,10 +93,10 @@ func (in integrator) panel(lo, hi, left, right float64, depth int) [2]float64 {
 				gauss[v] += half * gaussWeights[j/2] * s.value[v]
 			}
 		}
-		skipped = skipped || in.steppedOver(x-at, before, s.detuning)
-		before, at = s.detuning, x
+		skipped = skipped || in.steppedOver(x-at, before, s)
+		before, at = s, x
 		if i == 7 {
-			centre = s.detuning
+			centre = s
 		}
 	}
 	skipped = skipped || in.steppedOver(hi-at, before, right)
@@ -106,9 +110,14 @@ func (in integrator) panel(lo, hi, left, right float64, depth int) [2]float64 {
 }
 
 // steppedOver reports whether a resonance lies unseen between two points that
-// are step apart and have the detunings a and b, and might add more than the
-// tolerance. Its half width is about step/(b−a) and its peak at most 2, so its
-// area is at most 2π·step/(b−a).
-func (in integrator) steppedOver(step, a, b float64) bool {
-	return a < -1 && b > 1 && 2*math.Pi*step > in.tolerance*in.whole*(b-a)
+// are step apart and might add more than the tolerance: where the detuning comes
+// up through zero, of half width about step/(b−a) and a peak of at most 2, so of
+// an area of at most 2π·step/(b−a); or where the cavity passes one of its own
+// modes, just above which a heavy face resonates however narrowly.
+func (in integrator) steppedOver(step float64, a, b sample) bool {
+	least := in.tolerance * in.whole
+	if math.Floor(a.halfWaves) != math.Floor(b.halfWaves) && max(a.area, b.area) > least/4 && step > min(a.halfWidth, b.halfWidth) {
+		return true
+	}
+	return a.detuning < -1 && b.detuning > 1 && 2*math.Pi*step > least*(b.detuning-a.detuning)
 }
