@@ -144,13 +144,22 @@ func (p Project) FreshFinishID() string {
 }
 
 func fresh(prefix string, count int, id func(i int) string) string {
+	return freshIDs(prefix, count, id)()
+}
+
+// freshIDs returns a source of ids that none of those given has.
+func freshIDs(prefix string, count int, id func(i int) string) func() string {
 	taken := map[string]bool{}
 	for i := range count {
 		taken[id(i)] = true
 	}
-	for n := 1; ; n++ {
-		if s := prefix + strconv.Itoa(n); !taken[s] {
-			return s
+	n := 0
+	return func() string {
+		for {
+			n++
+			if s := prefix + strconv.Itoa(n); !taken[s] {
+				return s
+			}
 		}
 	}
 }

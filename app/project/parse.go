@@ -25,7 +25,7 @@ func Parse(data []byte) (Project, error) {
 	}
 	r := reader{problems: problems}
 	p := r.project(root)
-	c := checker{errs: r.problems}
+	c := newChecker(r.problems)
 	c.project(p)
 	if err := c.errs.Err(); err != nil {
 		return Project{}, err
@@ -237,23 +237,16 @@ func (r *reader) limits(n *node, l *Limits) {
 
 // nameUnnamed gives an id to each entry that the file leaves without one.
 func nameUnnamed(p *Project, root *node) {
-	unnamed := func(list string, i int) bool {
-		items := root.get(list).items
-		return items[i].kind == objectNode && items[i].get("id") == nil
-	}
-	for i := range p.Loudspeakers {
-		if unnamed("loudspeakers", i) {
-			p.Loudspeakers[i].ID = p.FreshLoudspeakerID()
-		}
-	}
-	for i := range p.Seats {
-		if unnamed("seats", i) {
-			p.Seats[i].ID = p.FreshSeatID()
-		}
-	}
-	for i := range p.Absorbers {
-		if unnamed("absorbers", i) {
-			p.Absorbers[i].ID = p.FreshAbsorberID()
+	name(root.get("loudspeakers"), "S", len(p.Loudspeakers), func(i int) *string { return &p.Loudspeakers[i].ID })
+	name(root.get("seats"), "seat", len(p.Seats), func(i int) *string { return &p.Seats[i].ID })
+	name(root.get("absorbers"), "A", len(p.Absorbers), func(i int) *string { return &p.Absorbers[i].ID })
+}
+
+func name(list *node, prefix string, count int, id func(i int) *string) {
+	next := freshIDs(prefix, count, func(i int) string { return *id(i) })
+	for i := range count {
+		if n := list.items[i]; n.kind == objectNode && n.get("id") == nil {
+			*id(i) = next()
 		}
 	}
 }

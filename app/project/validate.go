@@ -2,6 +2,7 @@ package project
 
 import (
 	"fmt"
+	"iter"
 	"math"
 	"strconv"
 	"strings"
@@ -30,35 +31,79 @@ const (
 // Validate checks every rule of a project and returns all that is wrong, empty
 // where nothing is. A Project without problems can be saved and read again.
 func (p Project) Validate() Errors {
-	var c checker
+	c := newChecker(nil)
 	c.project(p)
 	return c.errs
 }
 
 // checker collects problems. Of what is already at fault it says no more, so
 // that one slip gives one message.
-type checker struct{ errs Errors }
+type checker struct {
+	errs Errors
+	// at holds the paths at fault, above all paths that lie above one.
+	at, above map[string]bool
+}
+
+// newChecker returns a checker to which some problems are known.
+func newChecker(known Errors) *checker {
+	c := &checker{at: map[string]bool{}, above: map[string]bool{}}
+	for _, p := range known {
+		c.record(p)
+	}
+	return c
+}
+
+// record takes a problem down.
+func (c *checker) record(p Problem) {
+	c.errs = append(c.errs, p)
+	if p.Path == "" {
+		return
+	}
+	c.at[p.Path] = true
+	for parent := range parents(p.Path) {
+		c.above[parent] = true
+	}
+}
 
 func (c *checker) add(path, rule, value string) {
-	for _, p := range c.errs {
-		if p.Path != "" && within(path, p.Path) {
-			return
+	if !c.underFault(path) {
+		c.record(Problem{path, rule, value})
+	}
+}
+
+// underFault reports whether a path or one above it is at fault.
+func (c *checker) underFault(path string) bool {
+	if c.at[path] {
+		return true
+	}
+	for parent := range parents(path) {
+		if c.at[parent] {
+			return true
 		}
 	}
-	c.errs = append(c.errs, Problem{path, rule, value})
+	return false
 }
 
 // fine reports whether nothing at the paths, above or below them is at fault, so
 // that rules between several values can be judged.
 func (c *checker) fine(paths ...string) bool {
 	for _, path := range paths {
-		for _, p := range c.errs {
-			if p.Path != "" && (within(path, p.Path) || within(p.Path, path)) {
-				return false
-			}
+		if c.above[path] || c.underFault(path) {
+			return false
 		}
 	}
 	return true
+}
+
+// parents yields the paths above a path, the file as a whole left out.
+func parents(path string) iter.Seq[string] {
+	return func(yield func(string) bool) {
+		for i := len(path) - 1; i > 0; i-- {
+			if (path[i] == '.' || path[i] == '[') && !yield(path[:i]) {
+				return
+			}
+		}
+	}
 }
 
 func (c *checker) project(p Project) {

@@ -147,10 +147,7 @@ func (a Absorber) axes() [2]int {
 
 // apart checks that two absorbers of one surface do not overlap.
 func (c *checker) apart(path, otherPath string, a, other Absorber) {
-	if a.Surface != other.Surface || !c.fine(path, otherPath) {
-		return
-	}
-	if Overlap(a, other) {
+	if Overlap(a, other) && c.fine(path, otherPath) {
 		c.add(join(path, "centre_m"), "must not overlap "+otherPath+" ("+other.ID+") on the same surface",
 			"["+numberText(a.Centre[0])+", "+numberText(a.Centre[1])+"]")
 	}
