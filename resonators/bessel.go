@@ -42,10 +42,14 @@ func besselRatio(y complex128) complex128 {
 		}
 	}
 	// q_n = J_n/(x·J_{n−1}) = 1/(2n − y·q_{n+1}), carried as q = a/b; the tail
-	// left out dies as (r/2n)^2n and b stays below 1e150.
+	// left out dies as (r/2n)^2n. Only the quotient counts, so that both are
+	// scaled down before they overflow.
 	var a, b complex128 = 0, 1
 	for n := 20 + int(1.2*r); n > 1; n-- {
 		a, b = b, complex(float64(2*n), 0)*b-y*a
+		if math.Abs(real(b)) > 1e100 || math.Abs(imag(b)) > 1e100 {
+			a, b = a*1e-100, b*1e-100
+		}
 	}
 	// q_2 = a/b and q_1 = b/(2b − y·a), so their product is:
 	return a / (2*b - y*a)

@@ -93,3 +93,20 @@ func TestEndCorrections(t *testing.T) {
 		t.Errorf("inner end as wide as the box %v, want 0", got)
 	}
 }
+
+// Wide mouths at strongly damped frequencies reach arguments where the series
+// fails: values worked out apart with 40 figures.
+func TestBesselRatioOfLargeArguments(t *testing.T) {
+	for y, want := range map[complex128]complex128{
+		600 - 40i:      -0.00166134681977889 - 0.000307571901361844i,
+		81000 - 9000i:  -1.21807720074813e-5 - 1.43976103144533e-6i,
+		2000 - 1500i:   -0.000306799320283445 - 0.000248953744582159i,
+		-30000 - 100i:  3.29491834933459e-5 - 1.0919282754382e-7i,
+		50000 - 1i:     -2.00419071832571e-5 - 8.23628373621127e-10i,
+		1000000 - 4e4i: -9.98281840119752e-7 - 4.19300353161135e-8i,
+	} {
+		if got := besselRatio(y); cmplx.Abs(got-want) > 1e-9*cmplx.Abs(want) {
+			t.Errorf("y = %v: %v, want %v", y, got, want)
+		}
+	}
+}

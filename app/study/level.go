@@ -11,6 +11,9 @@ func Level(p project.Project, o Options) (Levels, error) {
 	o = o.withDefaults()
 	o.ModesToHz = o.ToHz
 	ctx := context.Background()
+	if err := tooLarge(p, o.ToHz, mostModesLevels); err != nil {
+		return Levels{}, err
+	}
 	shell, err := shellStage(p, o, nil)
 	if err != nil {
 		return Levels{}, err
@@ -25,9 +28,9 @@ func Level(p project.Project, o Options) (Levels, error) {
 
 // Absorbers computes only the absorbers of a project on their own.
 func Absorbers(p project.Project) ([]AbsorberRow, error) {
-	shell, err := shellStage(p, Options{}.withDefaults(), nil)
+	air, err := airOf(p)
 	if err != nil {
 		return nil, err
 	}
-	return newKit(p, shell.room.Air, nil, true).rows, nil
+	return newKit(p, air, nil, true).rows, nil
 }

@@ -41,6 +41,9 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 		progress = func(*Result) {}
 	}
 
+	if err := tooLarge(p, max(o.ToHz, o.ModesToHz), mostModes); err != nil {
+		return nil, err
+	}
 	shell, err := shellStage(p, o, past.shell)
 	if err != nil {
 		return nil, err

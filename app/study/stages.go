@@ -43,13 +43,9 @@ func shellStage(p project.Project, o Options, past *shellPart) (*shellPart, erro
 	if past != nil && reflect.DeepEqual(past.from, s.from) {
 		return past, nil
 	}
-	air, err := acoustics.NewAir(acoustics.Atmosphere{
-		TemperatureC:        p.Air.TemperatureC,
-		RelativeHumidityPct: p.Air.RelativeHumidityPct,
-		PressureKPa:         p.Air.PressureKPa,
-	})
+	air, err := airOf(p)
 	if err != nil {
-		return nil, fmt.Errorf("air: %w", err)
+		return nil, err
 	}
 	walls, err := linings(p)
 	if err != nil {
@@ -65,6 +61,41 @@ func shellStage(p project.Project, o Options, past *shellPart) (*shellPart, erro
 	s.limit = limitCurve(p.Limits)
 	s.bands = countBands(s.room)
 	return s, nil
+}
+
+func airOf(p project.Project) (acoustics.Air, error) {
+	air, err := acoustics.NewAir(acoustics.Atmosphere{
+		TemperatureC:        p.Air.TemperatureC,
+		RelativeHumidityPct: p.Air.RelativeHumidityPct,
+		PressureKPa:         p.Air.PressureKPa,
+	})
+	if err != nil {
+		return air, fmt.Errorf("air: %w", err)
+	}
+	return air, nil
+}
+
+// How many modes up to the highest frequency asked for are worked with: for the
+// levels some hundred megabytes with those above that the sums take in, for the
+// poles some minutes. A room with more is no room to be treated mode by mode.
+const (
+	mostModes       = 10_000
+	mostModesLevels = 100_000
+)
+
+// tooLarge refuses a room with more modes than most.
+func tooLarge(p project.Project, hz, most float64) error {
+	air, err := airOf(p)
+	if err != nil {
+		return err
+	}
+	box := acoustics.Box{Length: p.Room.Length, Width: p.Room.Width, Height: p.Room.Height}
+	_, count := box.CountBelow(air.SpeedOfSound, hz)
+	if count <= most {
+		return nil
+	}
+	return fmt.Errorf("room: has about %.0f modes up to %.0f Hz, more than the %.0f that are worked with: ask for a lower frequency; a room as large as this is not treated mode by mode",
+		count, hz, most)
 }
 
 // kitPart is what the absorbers' own figures depend on.
