@@ -128,8 +128,8 @@ func wrap(x float64) float64 { return x - 2*math.Pi*math.Round(x/(2*math.Pi)) }
 
 // recover looks for the zeros that the count says are missing, by Newton's
 // method on the determinant with the known zeros divided out and the bare
-// modes' poles multiplied in, from starts at the lost paths' beginnings and then
-// all over the contour.
+// modes' poles multiplied in, from starts where the paths were lost, beside the
+// units' roots, which crowd, and then all over the contour.
 func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted int, distants []distant) ([]path, error) {
 	w := f.newFollower(distants)
 	for _, s := range f.recoveryStarts(paths, e) {
@@ -146,12 +146,18 @@ func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted 
 	return paths, nil
 }
 
-// recoveryStarts lists where lost paths began, then a grid over the contour.
+// recoveryStarts lists where paths were lost, places beside the units' roots,
+// then a grid over the contour.
 func (f *Field) recoveryStarts(paths []path, e rectangle) []complex128 {
 	var starts []complex128
 	for i := range paths {
 		if !paths[i].found {
 			starts = append(starts, f.startOf(paths[i]))
+		}
+	}
+	for _, a := range paths {
+		if a.found && a.mode < 0 {
+			starts = append(starts, a.root*complex(1.002, 0.003), a.root*complex(0.998, -0.003))
 		}
 	}
 	for hz := e.left / (2 * math.Pi); hz < e.right/(2*math.Pi); hz += 3 {
@@ -162,8 +168,11 @@ func (f *Field) recoveryStarts(paths []path, e rectangle) []complex128 {
 	return starts
 }
 
-// startOf returns where a lost path began.
+// startOf returns how far a lost path came, or where it began.
 func (f *Field) startOf(a path) complex128 {
+	if a.last != 0 {
+		return a.last
+	}
 	if a.mode >= 0 {
 		return f.bareRoot(a.mode) * complex(1.0003, 0.0002)
 	}

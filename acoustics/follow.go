@@ -95,6 +95,10 @@ const (
 	// settled is the relative change at which a root is taken as found, onTheWay
 	// that at which a path goes on.
 	settled, onTheWay = 1e-11, 1e-7
+	// hopeless is the decay from which a unit is so damped that its pole will
+	// not be listed: that of the shortest T60 and a fifth. The count will miss it
+	// where the room undamps it after all.
+	hopeless = 1.2 * tallest
 )
 
 // follow carries a path from s = 0 to s = 1 by prediction and correction, with
@@ -114,7 +118,7 @@ func (w *follower) follow(ctx context.Context, a *path) {
 	}
 	var slope complex128 // of the secular function, as last seen
 	root, ok := w.correct(a, start, 0, &slope, onTheWay)
-	if !ok {
+	if !ok || a.mode < 0 && imag(root) > hopeless {
 		return
 	}
 	var (
@@ -122,6 +126,7 @@ func (w *follower) follow(ctx context.Context, a *path) {
 		trail   = trail{{0, root}}
 	)
 	for s < 1 {
+		a.last = root
 		if ctx.Err() != nil || step < leastStep {
 			return
 		}
@@ -133,6 +138,9 @@ func (w *follower) follow(ctx context.Context, a *path) {
 			step /= 2
 			slope = kept
 			continue
+		}
+		if imag(next) > 2*hopeless {
+			return
 		}
 		root, s = next, to
 		trail = append(trail, waypoint{to, next})

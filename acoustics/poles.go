@@ -52,6 +52,8 @@ type path struct {
 	unit  int // index of the unit, −1 for a mode's
 	root  complex128
 	found bool
+	// last is how far the path was followed, where it was lost.
+	last complex128
 }
 
 // Poles returns the complex frequencies at which the treated room rings by
@@ -98,7 +100,7 @@ func (f *Field) starts(upTo float64) []path {
 		paths = append(paths, path{mode: i, unit: -1})
 	}
 	for u, unit := range f.units {
-		if unit.Natural > 0 && unit.Natural <= 1.5*followAbove*upTo {
+		if unit.Natural > 0 && unit.Natural <= followAbove*followAbove*upTo {
 			paths = append(paths, path{mode: -1, unit: u})
 		}
 	}
