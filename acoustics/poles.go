@@ -44,6 +44,8 @@ const (
 	// followAbove is how far above the limit modes and units are followed, since
 	// their poles may come down into it.
 	followAbove = 1.15
+	// unitsAbove is the same for units, which the room's air tunes down.
+	unitsAbove = 1.4
 )
 
 // path is one oscillation followed from weak coupling to the room as it is.
@@ -100,7 +102,7 @@ func (f *Field) starts(upTo float64) []path {
 		paths = append(paths, path{mode: i, unit: -1})
 	}
 	for u, unit := range f.units {
-		if unit.Natural > 0 && unit.Natural <= followAbove*followAbove*upTo {
+		if unit.Natural > 0 && unit.Natural <= unitsAbove*upTo {
 			paths = append(paths, path{mode: -1, unit: u})
 		}
 	}
