@@ -328,7 +328,7 @@ func TestSampleNeverOverwrites(t *testing.T) {
 
 // Pictures and papers are written whole, in every format.
 func TestFigureAndSheets(t *testing.T) {
-	file := sampleFile(t, "vocal-booth")
+	file := sampleFile(t, "edit-suite")
 	for name, begins := range map[string]string{"a.png": "\x89PNG", "a.svg": "<?xml", "a.pdf": "%PDF"} {
 		for _, lane := range []string{"modes", "density", "level", "decay", "absorption", "plan", "section"} {
 			if status, _, errs := run(t, "", "figure", file, "--lane", lane, "--out", name); status != 0 {
