@@ -147,6 +147,9 @@ func (p lanePen) level() {
 	}
 	hi = math.Ceil(hi/10)*10 + 0.1
 	lo = math.Max(math.Floor(lo/10)*10, hi-60)
+	if len(p.r.Absorbers) > 0 {
+		y1 -= legendRoom
+	}
 	a := scale{lo: lo, hi: hi, y0: y0, y1: y1}
 	var marks []float64
 	for v := math.Ceil(lo/10) * 10; v <= hi; v += 10 {
@@ -171,6 +174,9 @@ func (p lanePen) levelPoints(a scale, level []float64) []vg.Point {
 	}
 	return pts
 }
+
+// legendRoom is the strip at the top of a lane that is left to its legend.
+const legendRoom = 14 * px
 
 // entry is one line of a legend.
 type entry struct {
@@ -249,7 +255,11 @@ func (p lanePen) bands(top vg.Length) {
 		p.line(x0, y, x1, y, w, p.s.Ochre)
 		p.line(x0, y-3*px, x0, y+3*px, p.s.Hair, p.s.Ochre)
 		p.line(x1, y-3*px, x1, y+3*px, p.s.Hair, p.s.Ochre)
-		p.text(x1+4*px, y, b.ID, p.s.Text*0.85, atLeft, p.s.Ink)
+		if _, _, right, _ := p.field(); x1+5*px+p.measure(b.ID, p.s.Text*0.85) > right {
+			p.text(x0-4*px, y, b.ID, p.s.Text*0.85, atRight, p.s.Ink)
+		} else {
+			p.text(x1+4*px, y, b.ID, p.s.Text*0.85, atLeft, p.s.Ink)
+		}
 	}
 }
 
@@ -272,7 +282,7 @@ func (p lanePen) decay() {
 			hi = math.Max(hi, m.Oscillator.T60())
 		}
 	}
-	a := scale{lo: 0.05, hi: math.Min(hi*1.2, 60), log: true, y0: y0, y1: y1}
+	a := scale{lo: 0.05, hi: math.Min(hi*1.2, 60), log: true, y0: y0, y1: y1 - legendRoom}
 	p.marks(a, []float64{0.05, 0.1, 0.2, 0.5, 1, 2, 5, 10, 20, 50}, "%g")
 	var limit []vg.Point
 	for _, m := range p.r.Modes {

@@ -22,21 +22,21 @@ func (s *writer) modeSchedule() {
 	s.page()
 	r := s.r
 	s.heading("Mode schedule")
-	s.paragraph(fmt.Sprintf("Room %s × %s × %s, %s. Speed of sound %.1f m/s at %s, %.0f %% humidity. Schroeder frequency %.0f Hz. Level: each mode's own peak at seat %s, dB re one loudspeaker of unit gain in the free field at 1 m. Limits: %s.",
+	s.paragraph(fmt.Sprintf("Room %s × %s × %s, %s. Speed of sound %s at %s, %.0f %% humidity. Schroeder frequency %.0f Hz. Level: each mode's own peak at seat %s, dB re one loudspeaker of unit gain in the free field at 1 m. Limits: %s.",
 		units.Length(r.Project.Room.Length, s.sys), units.Length(r.Project.Room.Width, s.sys), units.Length(r.Project.Room.Height, s.sys),
-		units.Volume(r.VolumeM3, s.sys), r.Air.SpeedOfSound, units.Temperature(r.Project.Air.TemperatureC, s.sys), r.Project.Air.RelativeHumidityPct,
+		units.Volume(r.VolumeM3, s.sys), units.Speed(r.Air.SpeedOfSound, s.sys), units.Temperature(r.Project.Air.TemperatureC, s.sys), r.Project.Air.RelativeHumidityPct,
 		r.SchroederHz, r.Project.Seats[0].ID, limitSource(r.Project.Limits)), textSize)
-	columns := []column{{"Mode", 6, false}, {"Hz", 6.2, true}, {"Kind", 9.5, false}, {"λ", 7.5, true}, {"T60 s", 5.6, true},
-		{"Limit s", 6.2, true}, {"Width Hz", 7.4, true}, {"dB", 5.6, true}, {"Treated: Hz, s", 12, false}, {"Pressure is greatest", 27, false}, {"No.", 4, true}, {"Absorber", 8, false}}
+	columns := []column{{"No.", 0, true}, {"Mode", 0, false}, {"Hz", 0, true}, {"Kind", 0, false}, {"λ", 0, true}, {"T60 s", 0, true},
+		{"Limit s", 0, true}, {"Width Hz", 0, true}, {"Level dB", 0, true}, {"Treated Hz, s", 0, false}, {"Pressure is greatest", 1, false}, {"Absorber", 0, false}}
 	var rows [][]string
 	for _, m := range r.Modes {
 		problem := ""
 		if m.Problem {
 			problem = fmt.Sprint(m.Rank)
 		}
-		rows = append(rows, []string{orderText(m.Mode.Order), fixed(m.Mode.Hz, 1), m.Mode.Kind().String(), units.Length(m.Wavelength, s.sys),
+		rows = append(rows, []string{problem, orderText(m.Mode.Order), fixed(m.Mode.Hz, 1), m.Mode.Kind().String(), units.Length(m.Wavelength, s.sys),
 			fixed(m.Oscillator.T60(), 2), fixed(m.LimitS, 2), fixed(m.Oscillator.HalfPowerWidth(), 1),
-			strings.TrimSuffix(units.Decibels(m.LevelDB[0]), " dB"), poles(m), m.Strongest, problem, s.ids(m.Absorbers)})
+			strings.TrimSuffix(units.Decibels(m.LevelDB[0]), " dB"), poles(m), m.Strongest, s.ids(m.Absorbers)})
 	}
 	s.table(columns, rows)
 	s.paragraph("λ: wavelength. Width: at half power. No.: rank as a problem, 1 the worst; a problem is a mode whose decay is over the limit and whose own peak at a seat is within 10 dB of the strongest there. Treated: the oscillations that the mode and the absorbers tuned to it have together.", textSize)
@@ -49,7 +49,7 @@ func poles(m study.ModeRow) string {
 	for _, p := range m.Poles() {
 		t = append(t, fmt.Sprintf("%.1f, %.2f", p.Oscillator.Natural, p.Oscillator.T60()))
 	}
-	return strings.Join(t, "; ")
+	return strings.Join(capped(t), "\n")
 }
 
 func (s *writer) ids(absorbers []int) string {
@@ -57,7 +57,17 @@ func (s *writer) ids(absorbers []int) string {
 	for _, a := range absorbers {
 		t = append(t, s.r.Absorbers[a].ID)
 	}
-	return strings.Join(t, ", ")
+	return strings.Join(capped(t), ", ")
+}
+
+// capped keeps a cell within a row: the first few of a long list and how many
+// more there are.
+func capped(t []string) []string {
+	const most = 6
+	if len(t) <= most {
+		return t
+	}
+	return append(t[:most-1:most-1], fmt.Sprintf("%d more", len(t)-most+1))
 }
 
 func limitSource(l project.Limits) string {
@@ -99,7 +109,7 @@ func (s *writer) planAndSection() {
 		c := s.r.Room.Box.OnSurface(a.Surface, a.Centre[0], a.Centre[1])
 		rows = append(rows, append(append([]string{a.ID, "absorber, centre of the first unit"}, at(c)...), "on the "+a.Surface.String()))
 	}
-	s.table([]column{{"Id", 10, false}, {"What", 22, false}, {"From front", 10, true}, {"From left", 10, true}, {"From floor", 10, true}, {"", 24, false}}, rows)
+	s.table([]column{{"Id", 0, false}, {"What", 0, false}, {"From front", 0, true}, {"From left", 0, true}, {"From floor", 0, true}, {"", 1, false}}, rows)
 }
 
 // lanes is the sheet of before and after.
@@ -126,13 +136,13 @@ func (s *writer) absorberList() {
 		s.paragraph("The project has no absorbers.", textSize)
 		return
 	}
-	columns := []column{{"Id", 8, false}, {"Kind", 13, false}, {"Units", 5, true}, {"Front of one", 16, false}, {"Dimensions", 44, false}, {"Resonance", 16, false}, {"For mode", 12, false}}
+	columns := []column{{"Id", 0, false}, {"Kind", 0, false}, {"Units", 0, true}, {"Front of one", 0, false}, {"Dimensions", 1, false}, {"Resonance", 0, false}, {"For mode", 0, false}}
 	var rows [][]string
 	for i, a := range s.r.Project.Absorbers {
 		row := s.r.Absorbers[i]
 		resonance := "broadband"
 		if o := row.Report.Oscillator; o != nil {
-			resonance = fmt.Sprintf("%.1f Hz, Q %.1f, acts %.0f to %.0f Hz", o.Natural, o.Q(), row.Report.Band[0], row.Report.Band[1])
+			resonance = fmt.Sprintf("%.1f Hz, Q %.1f\nacts %.0f to %.0f Hz", o.Natural, o.Q(), row.Report.Band[0], row.Report.Band[1])
 		}
 		target := ""
 		if row.Target >= 0 {
@@ -143,7 +153,8 @@ func (s *writer) absorberList() {
 			units.Small(a.Size[0], s.sys) + " × " + units.Small(a.Size[1], s.sys), strings.Join(Dimensions(a, s.sys), "; "), resonance, target})
 	}
 	s.table(columns, rows)
-	s.paragraph("Resonance and Q are calculated for the absorber alone; in its place the room adds its own air. Seal every cavity: a leak turns a tuned absorber into a badly tuned one. Common practice: cavity depth to ± 3 mm, holes to ± 0.2 mm; panel mass varies by 5 to 10 %, flow resistivity by 30 to 50 %, which moves a resonance by several per cent.", textSize)
+	s.paragraph(fmt.Sprintf("Resonance and Q are calculated for the absorber alone; in its place the room adds its own air. Seal every cavity: a leak turns a tuned absorber into a badly tuned one. Common practice: cavity depth to ± %s, holes to ± %s; panel mass varies by 5 to 10 %%, flow resistivity by 30 to 50 %%, which moves a resonance by several per cent.",
+		units.Small(0.003, s.sys), drill(s.sys)), textSize)
 	s.tolerances()
 }
 
@@ -152,14 +163,15 @@ func (s *writer) tolerances() {
 	var rows [][]string
 	for _, a := range s.r.Absorbers {
 		for _, d := range a.Sensitivities {
-			rows = append(rows, []string{a.ID, d.Words(), fmt.Sprintf("%+.2f Hz", d.F0PerStep), fmt.Sprintf("%+.2f", d.QPerStep)})
+			words, steps := Step(d, s.sys)
+			rows = append(rows, []string{a.ID, words, signed(d.F0PerStep*steps) + " Hz", signed(d.QPerStep * steps)})
 		}
 	}
 	if len(rows) == 0 {
 		return
 	}
 	s.heading("What a step of each dimension does")
-	s.table([]column{{"Id", 8, false}, {"Step", 40, false}, {"Resonance", 12, true}, {"Q", 12, true}}, rows)
+	s.table([]column{{"Id", 0, false}, {"Step", 1, false}, {"Resonance", 0, true}, {"Q", 0, true}}, rows)
 }
 
 // cautions is the last sheet.
@@ -174,4 +186,21 @@ func (s *writer) cautions() {
 	for _, c := range s.r.Cautions {
 		s.paragraph("– "+c, 9)
 	}
+}
+
+// drill is what a drilled hole keeps to.
+func drill(sys units.System) string {
+	if sys == units.US {
+		return "1/128 in"
+	}
+	return "0.2 mm"
+}
+
+// signed writes a change, plain 0.00 where it rounds to nothing.
+func signed(v float64) string {
+	text := fmt.Sprintf("%+.2f", v)
+	if text == "+0.00" || text == "-0.00" {
+		return "0.00"
+	}
+	return strings.Replace(text, "-", "−", 1)
 }

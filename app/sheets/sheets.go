@@ -158,5 +158,6 @@ func (s *writer) paragraph(text string, size float64) {
 // wrap breaks text into lines of at most the given width.
 func (s *writer) wrap(text string, room, size float64) []string {
 	s.doc.SetFont(family, "", size)
-	return s.doc.SplitText(text, room)
+	// The splitter takes the cells' own margins off the room.
+	return s.doc.SplitText(text, room+2*s.doc.GetCellMargin())
 }

@@ -1,28 +1,67 @@
 package sheets
 
-// column is one column of a table: its heading, its share of the page's width,
-// and whether it holds figures, set to the right.
+import "strings"
+
+// column is one column of a table: its heading and whether it holds figures, set
+// to the right. A column is as wide as what it holds; those with a share divide
+// among them what is left of the page's width, and wrap.
 type column struct {
 	head  string
 	share float64
 	right bool
 }
 
+// widest is how wide a column without a share may become, points; beyond it
+// wraps.
+const widest = 110.0
+
+// edges returns where the columns begin and the last one ends.
+func (s *writer) edges(columns []column, rows [][]string) []float64 {
+	var (
+		widths = make([]float64, len(columns))
+		rest   = s.w - 2*margin
+		shares float64
+	)
+	for i, c := range columns {
+		shares += c.share
+		if c.share > 0 {
+			continue
+		}
+		for word := range strings.FieldsSeq(c.head) {
+			widths[i] = max(widths[i], s.width(word, "B"))
+		}
+		for _, r := range rows {
+			for line := range strings.SplitSeq(r[i], "\n") {
+				widths[i] = max(widths[i], s.width(line, ""))
+			}
+		}
+		// A little more than the letters: rounding must not break a line.
+		widths[i] = min(widest, widths[i]) + 2*cellPad + 1
+		rest -= widths[i]
+	}
+	edges := []float64{margin}
+	for i, c := range columns {
+		switch {
+		case c.share > 0:
+			widths[i] = rest * c.share / shares
+		case shares == 0:
+			widths[i] *= (s.w - 2*margin) / (s.w - 2*margin - rest)
+		}
+		edges = append(edges, edges[i]+widths[i])
+	}
+	return edges
+}
+
+// width returns how wide a text of a table is, points.
+func (s *writer) width(text, style string) float64 {
+	s.doc.SetFont(family, style, textSize)
+	return s.doc.GetStringWidth(text)
+}
+
 // table writes rows under their headings; a page that is full goes on with the
-// headings again. A cell that is too wide wraps.
+// headings again.
 func (s *writer) table(columns []column, rows [][]string) {
-	whole := 0.0
-	for _, c := range columns {
-		whole += c.share
-	}
-	width := s.w - 2*margin
-	var edges []float64
-	x := margin
-	for _, c := range columns {
-		edges = append(edges, x)
-		x += width * c.share / whole
-	}
-	edges = append(edges, x)
+	edges := s.edges(columns, rows)
 	heads := make([]string, len(columns))
 	for i, c := range columns {
 		heads[i] = c.head

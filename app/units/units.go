@@ -77,6 +77,14 @@ func Mass(kg float64, s System) string {
 	return trimmed(kg, 2) + " kg/m²"
 }
 
+// Speed returns a speed of sound as text: metres or feet a second.
+func Speed(ms float64, s System) string {
+	if s == US {
+		return decimal(ms/0.3048, 1) + " ft/s"
+	}
+	return decimal(ms, 1) + " m/s"
+}
+
 // Temperature writes a temperature in °C.
 func Temperature(c float64, s System) string {
 	if s == US {

@@ -98,7 +98,7 @@ func (d *details) airForm() {
 		if d.state.Result == nil {
 			return ""
 		}
-		return fmt.Sprintf("%.2f m/s", d.state.Result.Air.SpeedOfSound)
+		return units.Speed(d.state.Result.Air.SpeedOfSound, d.state.system())
 	})
 	d.fact("Density", func() string {
 		if d.state.Result == nil {
@@ -460,7 +460,8 @@ func (d *details) absorberFigures(i int) {
 			t = append(t, fmt.Sprintf("Resonance %.1f Hz, Q %.1f, ζ %.3f.", o.Natural, o.Q(), o.DampingRatio()), peakWords(*o),
 				fmt.Sprintf("Acts from %.0f to %.0f Hz.", a.Report.Band[0], a.Report.Band[1]))
 			for _, s := range a.Sensitivities {
-				t = append(t, fmt.Sprintf("%s: %s Hz", s.Words(), signed(s.F0PerStep, 2)))
+				words, steps := sheets.Step(s, d.state.system())
+				t = append(t, fmt.Sprintf("%s: %s Hz", words, signed(s.F0PerStep*steps, 2)))
 			}
 		} else {
 			t = append(t, "Broadband: there is no oscillator.")
