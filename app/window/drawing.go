@@ -64,7 +64,7 @@ type hold struct {
 // grab is a drag under way.
 type grab struct {
 	hold
-	start          project.Project
+	start, last    project.Project // before the drag, and as it stands
 	from           fyne.Position
 	planAt, sectAt figures.Placement
 	moved          bool
@@ -230,7 +230,7 @@ func (d *drawing) MouseDown(e *desktop.MouseEvent) {
 	h := d.under(e.Position)
 	d.pick(h)
 	plan, section := d.placements()
-	d.grab = &grab{hold: h, start: d.state.Project, from: e.Position, planAt: plan, sectAt: section}
+	d.grab = &grab{hold: h, start: d.state.Project, last: d.state.Project, from: e.Position, planAt: plan, sectAt: section}
 }
 
 // pick selects a thing; the mode stays selected.
@@ -278,6 +278,7 @@ func (d *drawing) dragTo(g *grab, at fyne.Position) {
 	dx := float64(at.X-g.from.X) / perMetre
 	dy := -float64(at.Y-g.from.Y) / perMetre
 	if p, ok := moved(g.start, g.hold, dx, dy, snap); ok {
+		g.last = p
 		d.actions.Edit(g.label(), p, g.key(), false)
 	}
 }
@@ -291,7 +292,7 @@ func (d *drawing) DragEnd() {
 		return
 	}
 	d.actions.Dragging(false)
-	d.actions.Edit(g.label(), d.state.Project, g.key(), true)
+	d.actions.Edit(g.label(), g.last, g.key(), true)
 }
 
 // cancel takes a drag back.

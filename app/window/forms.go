@@ -49,9 +49,7 @@ func (d *details) roomForm() {
 		return 2
 	}, func(p *project.Project, i int) {
 		if i < 2 {
-			p.Limits.Curve = project.Curves()[i]
-		} else {
-			p.Limits.Curve = ""
+			p.Limits = project.Limits{Curve: project.Curves()[i]}
 		}
 	})
 	d.note(func() string {

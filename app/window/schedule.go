@@ -1,6 +1,7 @@
 package window
 
 import (
+	"cmp"
 	"image/color"
 	"math"
 	"slices"
@@ -75,19 +76,23 @@ func (s *schedule) sort() {
 	rows := slices.Clone(s.rows)
 	slices.SortStableFunc(rows, func(a, b scheduleRow) int {
 		x, y := a.keys[s.sorted], b.keys[s.sorted]
-		sign := 1
-		if s.falling {
-			sign = -1
-		}
 		switch {
-		case x < y || math.IsNaN(y) && !math.IsNaN(x):
-			return -sign
-		case x > y || math.IsNaN(x) && !math.IsNaN(y):
-			return sign
+		case math.IsNaN(x) || math.IsNaN(y):
+			// What has no figure comes last either way.
+			return boolInt(math.IsNaN(x)) - boolInt(math.IsNaN(y))
+		case s.falling:
+			return cmp.Compare(y, x)
 		}
-		return 0
+		return cmp.Compare(x, y)
 	})
 	s.rows = rows
+}
+
+func boolInt(b bool) int {
+	if b {
+		return 1
+	}
+	return 0
 }
 
 // index returns the row of the chosen item, −1 for none.
