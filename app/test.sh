@@ -6,7 +6,7 @@ set -eu
 here=$(CDPATH= cd -- "$(dirname -- "$0")/.." && pwd)
 cd "$here"
 export LANG=en_GB.UTF-8
-staticcheck=honnef.co/go/tools/cmd/staticcheck@2026.1
+staticcheck=honnef.co/go/tools/cmd/staticcheck@v0.7.0
 part() { printf '\n== %s\n' "$*"; }
 fail() {
 	printf 'FAILED: %s\n' "$*" >&2
