@@ -29,11 +29,16 @@ type runner struct {
 	levels  bool // the run has come as far as the levels
 	cancel  context.CancelFunc
 
-	last time.Duration // of the last complete run; the worker's own
+	// former is the furthest result there is, whose stages the next run takes up.
+	// The worker's own.
+	former *study.Result
+	// least is the shortest complete run of the document, 0 for none: what it
+	// takes while nothing else is at work. The worker's own.
+	least time.Duration
 }
 
 // quick is how long a run may take and still let a drag follow whole.
-const quick = 60 * time.Millisecond
+const quick = 50 * time.Millisecond
 
 // submit asks for a project to be studied.
 func (r *runner) submit(p project.Project) {
@@ -70,7 +75,6 @@ func (r *runner) stop() {
 
 // work studies what is submitted until nothing waits.
 func (r *runner) work() {
-	var former *study.Result
 	for {
 		r.mutex.Lock()
 		if r.next == nil {
@@ -82,12 +86,12 @@ func (r *runner) work() {
 		p := *r.next
 		r.next, r.levels = nil, false
 		if r.fresh {
-			former, r.fresh = nil, false
+			r.former, r.fresh, r.least = nil, false, 0
 		}
 		ctx, cancel := context.WithCancel(context.Background())
 		r.cancel = cancel
 		r.mutex.Unlock()
-		former = r.run(ctx, p, former)
+		r.former = r.run(ctx, p, r.former)
 		cancel()
 	}
 }
@@ -95,7 +99,8 @@ func (r *runner) work() {
 // run studies one project and returns the furthest result it has.
 func (r *runner) run(ctx context.Context, p project.Project, former *study.Result) *study.Result {
 	start := time.Now()
-	whole := former != nil && r.last > 0 && r.last < quick
+	cold := former == nil
+	whole := !cold && r.least > 0 && r.least < quick
 	result, err := study.Run(ctx, p, r.options, former, func(partial *study.Result) {
 		former = partial
 		if whole {
@@ -111,7 +116,13 @@ func (r *runner) run(ctx context.Context, p project.Project, former *study.Resul
 	})
 	switch {
 	case err == nil:
-		r.last = time.Since(start)
+		took := time.Since(start)
+		if cold {
+			took /= 4 // about what the parts are worth that later runs take over
+		}
+		if r.least == 0 || took < r.least {
+			r.least = took
+		}
 		r.do(func() { r.show(result, nil) })
 		return result
 	case ctx.Err() == nil:
