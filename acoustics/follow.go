@@ -17,7 +17,7 @@ type follower struct {
 func (f *Field) newFollower(distants []distant) *follower {
 	r := len(f.units)
 	w := &follower{f: f, t: f.newTransfer(), lu: newLU(r), rhs: make([]complex128, r)}
-	w.t.distants = distants
+	w.t.distants, w.t.unitsOnly = distants, true
 	return w
 }
 

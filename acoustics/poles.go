@@ -188,6 +188,7 @@ func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rec
 	for w := range workers {
 		group.Go(func() {
 			r := f.newFollower(distants)
+			r.t.unitsOnly = false
 			for i := w; i < len(paths) && ctx.Err() == nil; i += workers {
 				a := paths[i]
 				if a.found && imag(a.root) <= tallest && imag(a.root) > 0 {

@@ -20,6 +20,9 @@ type transfer struct {
 	gamma  []complex128 // in the order of Field.sums
 
 	distants []distant // nil: the complete sums everywhere
+	// unitsOnly leaves out all pairs but those of two units, which is all that a
+	// determinant needs.
+	unitsOnly bool
 	powers   [distantTerms]complex128
 }
 
@@ -154,19 +157,35 @@ func (t *transfer) sum() {
 	})
 }
 
-// eachSum adds up the factors of the first n modes over every pair.
+// eachSum adds up the factors of the first n modes over every pair that is
+// wanted.
 func (t *transfer) eachSum(n int, visit func(at int, sum complex128)) {
 	f := t.f
-	last := -1
-	f.eachPair(func(p, q, at int) {
-		if p != last {
-			floats.MulTo(t.tr[:n], t.re[:n], f.weights[p][:n])
-			floats.MulTo(t.ti[:n], t.im[:n], f.weights[p][:n])
-			last = p
+	var (
+		re, im = t.re[:n], t.im[:n]
+		tr, ti = t.tr[:n], t.ti[:n]
+		last   = -1
+		sum    = func(p, q, at int) {
+			if p != last {
+				floats.MulTo(tr, re, f.weights[p][:n])
+				floats.MulTo(ti, im, f.weights[p][:n])
+				last = p
+			}
+			w := f.weights[q][:n]
+			visit(at, complex(floats.Dot(tr, w), floats.Dot(ti, w)))
 		}
-		w := f.weights[q][:n]
-		visit(at, complex(floats.Dot(t.tr[:n], w), floats.Dot(t.ti[:n], w)))
-	})
+	)
+	if !t.unitsOnly {
+		f.eachPair(sum)
+		return
+	}
+	at := 0
+	for p := range f.units {
+		for q := range p + 1 {
+			sum(p, q, at)
+			at++
+		}
+	}
 }
 
 // unitPair returns Γ between two units.
