@@ -2,6 +2,7 @@ package figures
 
 import (
 	"math"
+	"slices"
 
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/draw"
@@ -64,6 +65,7 @@ func (p *sheetPen) sheet(title string, ends, sides [2]string) {
 	p.absorbers()
 	p.loudspeakers()
 	p.seats()
+	p.labels()
 	p.dimensions()
 	p.text(8*px, p.height()-9*px, title, p.s.Text, atLeft, p.s.Ink)
 	x0, y0 := p.at.To(0, 0)
@@ -189,7 +191,34 @@ func (p *sheetPen) absorbers() {
 			p.outline(x0, y0, x1, y1, w, p.s.Ochre)
 			p.seams(a, x0, y0, x1, y1)
 		}
-		p.label(a.ID, x0, y0, x1, y1)
+	}
+}
+
+// labels letters everything, over all that is drawn: what is selected first, then
+// seats and loudspeakers, then absorbers.
+func (p *sheetPen) labels() {
+	project := p.r.Project
+	absorber := func(i int) {
+		mx0, my0, mx1, my1, _ := AbsorberFrame(project.Absorbers[i], project.Room, p.up)
+		x0, y0 := p.at.To(mx0, my0)
+		x1, y1 := p.at.To(mx1, my1)
+		p.label(project.Absorbers[i].ID, x0, y0, x1, y1)
+	}
+	if i := p.v.Absorber; i >= 0 && i < len(project.Absorbers) {
+		absorber(i)
+	}
+	for _, s := range project.Seats {
+		x, y := p.at.To(s.At[0], s.At[p.up])
+		p.label(s.ID, x-6*px, y-6*px, x+6*px, y+6*px)
+	}
+	for _, l := range project.Loudspeakers {
+		x, y := p.at.To(l.At[0], l.At[p.up])
+		p.label(l.ID, x-7*px, y-7*px, x+7*px, y+7*px)
+	}
+	for i := range project.Absorbers {
+		if i != p.v.Absorber {
+			absorber(i)
+		}
 	}
 }
 
@@ -232,13 +261,11 @@ func (p *sheetPen) label(s string, x0, y0, x1, y1 vg.Length) {
 	}
 }
 
-func (p *sheetPen) taken(f frame) bool {
-	for _, u := range p.used {
-		if u.meets(f) {
-			return true
-		}
-	}
-	return false
+func (p *sheetPen) taken(f frame) bool { return taken(p.used, f) }
+
+// taken reports whether a frame meets one of those that are taken.
+func taken(used []frame, f frame) bool {
+	return slices.ContainsFunc(used, f.meets)
 }
 
 // loudspeakers are triangles that point to the first seat.
@@ -264,7 +291,6 @@ func (p *sheetPen) loudspeakers() {
 		if i == p.v.Loudspeaker {
 			p.ring(x, y, 11*px, 1.4*px, p.s.Select)
 		}
-		p.label(l.ID, x-r, y-r, x+r, y+r)
 	}
 }
 
@@ -280,7 +306,6 @@ func (p *sheetPen) seats() {
 		if i == p.v.SelectedSeat {
 			p.ring(x, y, 11*px, 1.4*px, p.s.Select)
 		}
-		p.label(s.ID, x-r, y-r, x+r, y+r)
 	}
 }
 

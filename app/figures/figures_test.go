@@ -3,6 +3,7 @@ package figures_test
 import (
 	"bytes"
 	"context"
+	"image"
 	"image/color"
 	"math"
 	"testing"
@@ -127,6 +128,22 @@ func TestInkFollowsLevel(t *testing.T) {
 	// (1,0,0) is among the loudest at the seat, (0,1,0) has a node there.
 	if loud, still := dark(0), dark(1); loud >= still-40 {
 		t.Errorf("the loud mode is %v light, the one at a node %v", loud, still)
+	}
+}
+
+// The ground is the paper's own colour, by day and by night, in a buffer that is
+// new or used.
+func TestGroundIsThePaper(t *testing.T) {
+	r := studied(t, "edit-suite")
+	for name, style := range map[string]figures.Style{"day": figures.Paper(), "night": figures.Night()} {
+		style.Laid = true
+		var img *image.RGBA
+		for range 2 {
+			img = figures.Render(img, 300, 120, 1, style.Paper, func(c draw.Canvas) { figures.DrawLane(c, figures.LevelLane, r, figures.DefaultView(r), style) })
+			if got, want := img.At(1, 1), color.RGBAModel.Convert(style.Paper); got != want {
+				t.Errorf("%s: the ground is %v, the paper %v", name, got, want)
+			}
+		}
 	}
 }
 

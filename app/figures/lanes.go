@@ -237,10 +237,17 @@ func (p lanePen) density() {
 	p.bands(y1)
 }
 
-// bands draws each absorber's band of action as a span under the top edge.
+// bands draws each absorber's band of action as a span under the top edge. Those
+// that are too many to be told apart go without names, but for the selected one.
 func (p lanePen) bands(top vg.Length) {
-	row := 0
-	for i, b := range p.r.Absorbers {
+	var (
+		row            int
+		used           []frame
+		_, _, right, _ = p.field()
+		size           = p.s.Text * 0.85
+	)
+	for _, i := range p.absorberOrder() {
+		b := p.r.Absorbers[i]
 		o := b.Report.Oscillator
 		if o == nil || b.Report.Band[1] < p.v.FromHz || b.Report.Band[0] > p.v.ToHz {
 			continue
@@ -255,12 +262,33 @@ func (p lanePen) bands(top vg.Length) {
 		p.line(x0, y, x1, y, w, p.s.Ochre)
 		p.line(x0, y-3*px, x0, y+3*px, p.s.Hair, p.s.Ochre)
 		p.line(x1, y-3*px, x1, y+3*px, p.s.Hair, p.s.Ochre)
-		if _, _, right, _ := p.field(); x1+5*px+p.measure(b.ID, p.s.Text*0.85) > right {
-			p.text(x0-4*px, y, b.ID, p.s.Text*0.85, atRight, p.s.Ink)
-		} else {
-			p.text(x1+4*px, y, b.ID, p.s.Text*0.85, atLeft, p.s.Ink)
+		x, align, room := x1+4*px, atLeft, p.measure(b.ID, size)
+		at := frame{x, y - size/2, x + room, y + size/2}
+		if at.x1 > right {
+			x, align = x0-4*px, atRight
+			at = frame{x - room, y - size/2, x, y + size/2}
+		}
+		band := frame{x0, y - 3*px, x1, y + 3*px}
+		if !taken(used, at) {
+			p.text(x, y, b.ID, size, align, p.s.Ink)
+			used = append(used, at)
+		}
+		used = append(used, band)
+	}
+}
+
+// absorberOrder lists the absorbers, the selected one first.
+func (p lanePen) absorberOrder() []int {
+	var order []int
+	if i := p.v.Absorber; i >= 0 && i < len(p.r.Absorbers) {
+		order = append(order, i)
+	}
+	for i := range p.r.Absorbers {
+		if i != p.v.Absorber {
+			order = append(order, i)
 		}
 	}
+	return order
 }
 
 func niceStep(v float64) float64 {
@@ -339,7 +367,9 @@ func (p lanePen) absorption() {
 	a := scale{lo: 0, hi: 1.05, y0: y0, y1: y1}
 	p.marks(a, []float64{0, 0.25, 0.5, 0.75, 1}, "%.2f")
 	dashes := [][]vg.Length{nil, {6 * px, 3 * px}, {2 * px, 2 * px}, {8 * px, 3 * px, 2 * px, 3 * px}}
-	for i, b := range p.r.Absorbers {
+	var used []frame
+	for _, i := range p.absorberOrder() {
+		b := p.r.Absorbers[i]
 		var pts []vg.Point
 		for _, t := range b.Report.ThirdOctaves {
 			if p.sees(t.Hz) {
@@ -351,8 +381,13 @@ func (p lanePen) absorption() {
 			w = 2.6 * px
 		}
 		p.curve(pts, w, p.s.Ochre, dashes[i%len(dashes)]...)
-		if best := highest(pts); best >= 0 && i < 12 {
-			p.text(pts[best].X, pts[best].Y+7*px, b.ID, p.s.Text*0.85, atMiddle, p.s.Ink)
+		if best := highest(pts); best >= 0 {
+			x, y, size := pts[best].X, pts[best].Y+7*px, p.s.Text*0.85
+			half := p.measure(b.ID, size)/2 + 2*px
+			if at := (frame{x - half, y - size/2, x + half, y + size/2}); !taken(used, at) {
+				p.text(x, y, b.ID, size, atMiddle, p.s.Ink)
+				used = append(used, at)
+			}
 		}
 	}
 }

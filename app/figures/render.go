@@ -24,12 +24,13 @@ func Render(buffer *image.RGBA, w, h int, scale float64, paper color.Color, pain
 	if buffer == nil || buffer.Rect.Dx() != w || buffer.Rect.Dy() != h {
 		buffer = image.NewRGBA(image.Rect(0, 0, w, h))
 	}
-	imagedraw.Draw(buffer, buffer.Rect, image.NewUniform(paper), image.Point{}, imagedraw.Src)
 	ctx := gg.NewContextForRGBA(buffer)
 	ctx.SetLineCapButt()
 	ctx.InvertY()
 	dpi := int(96*scale + 0.5)
 	c := vgimg.NewWith(vgimg.UseDPI(dpi), vgimg.UseImageWithContext(buffer, ctx))
+	// The canvas has laid a white ground.
+	imagedraw.Draw(buffer, buffer.Rect, image.NewUniform(paper), image.Point{}, imagedraw.Src)
 	paint(draw.New(c))
 	return buffer
 }
