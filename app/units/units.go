@@ -297,17 +297,21 @@ func number(t string) (float64, error) {
 	return strconv.ParseFloat(t, 64)
 }
 
-// ParseNumber reads a number as people type it, with a point or a comma, and
-// any unit behind it left aside.
-func ParseNumber(text string) (float64, error) {
+// ParseNumber reads a number as people type it, with a point or a comma, and the
+// given unit behind it or none. Another unit is an error: it would mean another
+// number.
+func ParseNumber(text, unit string) (float64, error) {
 	t := strings.TrimSpace(strings.ReplaceAll(strings.ReplaceAll(text, ",", "."), "−", "-"))
-	end := 0
-	for end < len(t) && strings.ContainsRune("0123456789.-+eE", rune(t[end])) {
-		end++
+	bare := t
+	if unit != "" && len(t) > len(unit) && strings.EqualFold(t[len(t)-len(unit):], unit) {
+		bare = strings.TrimSpace(t[:len(t)-len(unit)])
 	}
-	v, err := strconv.ParseFloat(t[:end], 64)
-	if err != nil || math.IsInf(v, 0) || math.IsNaN(v) {
-		return 0, fmt.Errorf("%q is no number", strings.TrimSpace(text))
+	v, err := strconv.ParseFloat(bare, 64)
+	switch {
+	case err == nil && !math.IsInf(v, 0) && !math.IsNaN(v):
+		return v, nil
+	case unit != "":
+		return 0, fmt.Errorf("%q is no number in %s", strings.TrimSpace(text), unit)
 	}
-	return v, nil
+	return 0, fmt.Errorf("%q is no number", strings.TrimSpace(text))
 }

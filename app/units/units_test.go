@@ -74,13 +74,16 @@ func TestWrittenLengthsAreReadBack(t *testing.T) {
 }
 
 func TestNumbersAreRead(t *testing.T) {
-	for text, want := range map[string]float64{"20": 20, " 2,5 °C": 2.5, "−3 dB": -3, "50 %": 50} {
-		if got, err := ParseNumber(text); err != nil || got != want {
-			t.Errorf("ParseNumber(%q) = %v, %v; want %v", text, got, err, want)
+	for text, c := range map[string]struct {
+		unit string
+		want float64
+	}{"20": {"°C", 20}, " 2,5 °C": {"°C", 2.5}, "−3 dB": {"dB", -3}, "50 %": {"%", 50}, "-3db": {"dB", -3}, "7": {"", 7}, "1e3 Pa·s/m²": {"Pa·s/m²", 1000}} {
+		if got, err := ParseNumber(text, c.unit); err != nil || got != c.want {
+			t.Errorf("ParseNumber(%q, %q) = %v, %v; want %v", text, c.unit, got, err, c.want)
 		}
 	}
-	for _, bad := range []string{"", "NaN", "Inf", "x", "1e999"} {
-		if v, err := ParseNumber(bad); err == nil {
+	for _, bad := range []string{"", "NaN", "Inf", "x", "1e999", "3 apples", "10 kPa", "dB"} {
+		if v, err := ParseNumber(bad, "dB"); err == nil {
 			t.Errorf("ParseNumber(%q) = %v, want an error", bad, v)
 		}
 	}

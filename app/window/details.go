@@ -10,6 +10,7 @@ import (
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/theme"
 	"fyne.io/fyne/v2/widget"
 
 	"stillroom/acoustics"
@@ -331,11 +332,12 @@ func (d *details) choice(name string, names []string, get func(project.Project) 
 func (d *details) note(value func() string) {
 	l := widget.NewLabel("")
 	l.Wrapping = fyne.TextWrapWord
-	l.SizeName = "caption"
+	l.SizeName = theme.SizeNameCaptionText
 	d.form.Add(l)
 	d.updates = append(d.updates, func() {
 		if t := value(); t != l.Text {
 			l.SetText(t)
+			d.form.Refresh() // the lines may be more or fewer
 		}
 	})
 }

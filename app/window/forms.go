@@ -385,7 +385,7 @@ func (d *details) kindFields(path, kind string, at func(*project.Project) *proje
 			num("Flow resistivity", "fill.flow_pa_s_m2", flow, func(a *project.Absorber) *float64 { return &a.Neck.Fill.FlowPaSM2 })
 		}
 	case "panel":
-		num("Sheet's mass", "mass_kg_m2", inUnit("kg/m²", 0.1), func(a *project.Absorber) *float64 { return &a.Panel.MassKgM2 })
+		num("Sheet's mass", "mass_kg_m2", massKgM2, func(a *project.Absorber) *float64 { return &a.Panel.MassKgM2 })
 		num("Thickness", "thickness_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Panel.ThicknessMM })
 		num("Young's modulus", "youngs_gpa", inUnit("GPa", 0.5), func(a *project.Absorber) *float64 { return &a.Panel.YoungsGPa })
 		num("Poisson's ratio", "poisson", number, func(a *project.Absorber) *float64 { return &a.Panel.Poisson })

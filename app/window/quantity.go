@@ -24,11 +24,13 @@ const (
 	plain quantityKind = iota
 	metres
 	millimetres
+	areaMass
 )
 
 var (
 	lengthM     = quantity{kind: metres, step: 0.01}
 	lengthMM    = quantity{kind: millimetres, step: 1}
+	massKgM2    = quantity{kind: areaMass, unit: "kg/m²", step: 0.1}
 	perCent     = quantity{unit: "%", step: 1}
 	shareOfArea = quantity{unit: "%", step: 0.05, share: true}
 	number      = quantity{step: 0.01}
@@ -48,6 +50,8 @@ func (q quantity) write(v float64, s units.System) string {
 		return units.Small(v/1000, s)
 	case q.kind == millimetres:
 		return shortest(v) + " mm"
+	case q.kind == areaMass && s == units.US:
+		return shortest(math.Round(v/kgM2PerLbFt2*1e4)/1e4) + " lb/ft²"
 	case q.share:
 		return shortest(math.Round(v*1e6)/1e4) + " %"
 	case q.unit == "":
@@ -69,11 +73,28 @@ func (q quantity) read(text string, s units.System) (float64, error) {
 		m, err := units.ParseLength(text, s, true)
 		return math.Round(m*1e9) / 1e6, err
 	}
-	v, err := units.ParseNumber(text)
+	if q.kind == areaMass {
+		return readAreaMass(text, s)
+	}
+	v, err := units.ParseNumber(text, q.unit)
 	if q.share {
 		v /= 100
 	}
 	return v, err
+}
+
+// kgM2PerLbFt2 is 1 lb/ft² in kg/m².
+const kgM2PerLbFt2 = 0.45359237 / (0.3048 * 0.3048)
+
+// readAreaMass reads a mass per area in either unit, a bare number in the
+// system's own.
+func readAreaMass(text string, s units.System) (float64, error) {
+	lower := strings.ToLower(text)
+	if strings.Contains(lower, "lb") || s == units.US && !strings.Contains(lower, "kg") {
+		v, err := units.ParseNumber(text, "lb/ft²")
+		return math.Round(v*kgM2PerLbFt2*1e6) / 1e6, err
+	}
+	return units.ParseNumber(text, "kg/m²")
 }
 
 // fault turns the problems of an edited project into one line for the field of

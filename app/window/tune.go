@@ -82,7 +82,7 @@ func (t *tuner) search(depth, target string, kinds []string) {
 		t.say.SetText(err.Error())
 		return
 	}
-	seconds, err := units.ParseNumber(target)
+	seconds, err := units.ParseNumber(target, "s")
 	if err != nil || seconds <= 0 {
 		t.say.SetText("T60 wanted must be a time above 0 s.")
 		return

@@ -727,3 +727,19 @@ func TestSamplesOpen(t *testing.T) {
 		h.until("the levels are there", func() bool { return h.state.Result != nil })
 	}
 }
+
+// What an absorber is calculated to do stands under its fields.
+func TestAbsorberFiguresAreShown(t *testing.T) {
+	h := open(t)
+	h.selected(Selection{-1, 1, -1, -1, -1})
+	h.settle()
+	for _, o := range test.LaidOutObjects(h.details.form) {
+		if l, ok := o.(*widget.Label); ok && strings.Contains(l.Text, "Resonance 73.2 Hz") {
+			if l.Size().Height < 60 || !l.Visible() {
+				t.Errorf("the figures have %v", l.Size())
+			}
+			return
+		}
+	}
+	t.Error("the figures are not shown")
+}
