@@ -47,6 +47,15 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 	return units
 }
 
+// UnitAlone returns the first piece of an absorber's first unit as the room knows
+// it, its own resonance not looked for (Natural is 0).
+func UnitAlone(a Absorber, air acoustics.Air, at Placement) acoustics.Unit {
+	a = fitted(a, at.Size)
+	p := patches(a, acoustics.Patch{Surface: at.Surface, Centre: at.Centre, Size: at.Size})[0]
+	area := p.Size[0] * p.Size[1]
+	return acoustics.Unit{Patch: p, Impedance: func(omega complex128) complex128 { return a.InRoom(omega, area, air) }}
+}
+
 // patches returns the pieces of one unit.
 func patches(a Absorber, whole acoustics.Patch) []acoustics.Patch {
 	switch v := a.(type) {

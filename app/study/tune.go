@@ -48,7 +48,10 @@ func Tune(ctx context.Context, r *Result, q TuneRequest, progress func(done, tot
 	if q.Mode < 0 || q.Mode >= len(r.Modes) {
 		return nil, fmt.Errorf("tune: there is no mode number %d", q.Mode)
 	}
-	candidates := tuning.Propose(r.problem(q))
+	candidates, err := tuning.Propose(ctx, r.problem(q))
+	if err != nil {
+		return nil, err
+	}
 	var out []Proposal
 	for i, c := range candidates {
 		if progress != nil {
@@ -105,8 +108,7 @@ func (r *Result) problem(q TuneRequest) tuning.Problem {
 		Mode: r.Modes[q.Mode].Mode, Box: r.Room.Box, Air: r.Air,
 		Kinds: q.Kinds, Surfaces: q.Surfaces, Depth: depth, TargetT60: r.target(q),
 		Reactance: func(a resonators.Absorber, at resonators.Placement, hz float64) float64 {
-			at.Units = 1
-			u := resonators.PlaceUnits(a, r.Air, at, 0)[0]
+			u := resonators.UnitAlone(a, r.Air, at)
 			return u.Reactance(hz, loads.Of(u.Patch), r.Air.Density)
 		},
 	}

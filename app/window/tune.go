@@ -29,8 +29,8 @@ type tuner struct {
 }
 
 func tuneColumns() []scheduleColumn {
-	return []scheduleColumn{{"Kind", 14, false}, {"Where", 22, false}, {"Units", 5, true}, {"f0 Hz", 7, true}, {"Q", 6, true}, {"μ", 7, true},
-		{"Longest T60 s", 11, true}, {"Meets", 6, false}, {"Dimensions", 48, false}}
+	return []scheduleColumn{{"Kind", 14, false}, {"Where", 22, false}, {"Units", 7, true}, {"f0 Hz", 7, true}, {"Q", 6, true}, {"μ", 7, true},
+		{"Longest T60 s", 14, true}, {"Meets", 7, false}, {"Dimensions", 44, false}}
 }
 
 // tune opens the tuner for a mode.

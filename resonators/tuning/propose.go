@@ -2,6 +2,7 @@ package tuning
 
 import (
 	"cmp"
+	"context"
 	"math"
 	"slices"
 
@@ -22,8 +23,9 @@ const perPlace = 2
 // Propose returns absorbers that can be built and meet the mode, best first:
 // those that bring both of the pair within the target before the rest, then by
 // the longer decay of the pair. It is deterministic. The list is empty where
-// nothing that fits the depth and the free surfaces can be tuned to the mode.
-func Propose(p Problem) []Candidate {
+// nothing that fits the depth and the free surfaces can be tuned to the mode. The
+// error is that of ctx.
+func Propose(ctx context.Context, p Problem) ([]Candidate, error) {
 	kinds := p.Kinds
 	if len(kinds) == 0 {
 		kinds = Kinds()
@@ -40,17 +42,17 @@ func Propose(p Problem) []Candidate {
 	var out []Candidate
 	for _, s := range surfaces {
 		if slices.Contains(kinds, "neck") {
-			out = append(out, best(p.necks(s, stock))...)
+			out = append(out, best(p.necks(ctx, s, stock))...)
 		}
 		if slices.Contains(kinds, "panel") {
-			out = append(out, best(p.panels(s, stock))...)
+			out = append(out, best(p.panels(ctx, s, stock))...)
 		}
 	}
 	out = shortList(out, kinds, cmp.Or(p.Most, 12))
 	for i := range out {
 		out[i].Tolerances = p.tolerances(out[i])
 	}
-	return out
+	return out, ctx.Err()
 }
 
 // shortList keeps the best, an equal share of each kind where there are enough,
@@ -105,7 +107,7 @@ func (p Problem) strengthAt(s acoustics.Surface, size [2]float64, units int, dep
 
 // necks proposes boxes on one surface: for each tube, front and number of boxes
 // the neck length that meets the mode.
-func (p Problem) necks(s acoustics.Surface, stock Stock) []Candidate {
+func (p Problem) necks(ctx context.Context, s acoustics.Surface, stock Stock) []Candidate {
 	var out []Candidate
 	board := stock.Boards[len(stock.Boards)/2]
 	inner := p.Depth - 2*board
@@ -113,7 +115,7 @@ func (p Problem) necks(s acoustics.Surface, stock Stock) []Candidate {
 		return nil
 	}
 	for _, side := range []float64{0.3, 0.4, 0.5, 0.6, 0.8} {
-		for units := 1; units <= mostUnits; units++ {
+		for units := 1; units <= mostUnits && ctx.Err() == nil; units++ {
 			size := [2]float64{side, side}
 			at, squared, ok := p.strengthAt(s, size, units, p.Depth)
 			if !ok || squared < 1e-3 {
@@ -176,11 +178,11 @@ func (p Problem) neck(at resonators.Placement, tube Tube, board, inner, gross fl
 
 // panels proposes membranes on one surface: for each sheet, front and number of
 // units the cavity depth that meets the mode, with the fill that damps best.
-func (p Problem) panels(s acoustics.Surface, stock Stock) []Candidate {
+func (p Problem) panels(ctx context.Context, s acoustics.Surface, stock Stock) []Candidate {
 	var out []Candidate
 	for _, size := range panelSizes() {
 		built := make([]bool, len(stock.Panels)) // enough of this sheet
-		for units := 1; units <= mostUnits; units++ {
+		for units := 1; units <= mostUnits && ctx.Err() == nil; units++ {
 			at, squared, ok := p.strengthAt(s, size, units, p.Depth)
 			if !ok || squared < 1e-3 {
 				break

@@ -1,6 +1,8 @@
 package tuning
 
 import (
+	"context"
+	"errors"
 	"math"
 	"reflect"
 	"testing"
@@ -8,6 +10,24 @@ import (
 	"stillroom/acoustics"
 	"stillroom/resonators"
 )
+
+func propose(t *testing.T, p Problem) []Candidate {
+	t.Helper()
+	c, err := Propose(context.Background(), p)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return c
+}
+
+// A search that is stopped says so.
+func TestProposeStops(t *testing.T) {
+	ctx, stop := context.WithCancel(context.Background())
+	stop()
+	if _, err := Propose(ctx, problem(t)); !errors.Is(err, context.Canceled) {
+		t.Errorf("stopped, it returns %v", err)
+	}
+}
 
 func problem(t *testing.T) Problem {
 	t.Helper()
@@ -26,7 +46,7 @@ func TestProposalsCanBeBuilt(t *testing.T) {
 	p := problem(t)
 	p.Occupied = []Occupied{{Surface: acoustics.Left, Centre: [2]float64{0.5, 1}, Size: [2]float64{1, 2}, Depth: 0.1}}
 	kinds := map[string]int{}
-	for i, c := range Propose(p) {
+	for i, c := range propose(t, p) {
 		kinds[c.Absorber.Kind()]++
 		if err := c.Absorber.Validate(); err != nil {
 			t.Errorf("%d: %v", i, err)
@@ -61,7 +81,7 @@ func TestProposalsCanBeBuilt(t *testing.T) {
 func TestProposeIsDeterministic(t *testing.T) {
 	p := problem(t)
 	p.Kinds, p.Surfaces = []string{"neck"}, []acoustics.Surface{acoustics.Right}
-	a, b := Propose(p), Propose(p)
+	a, b := propose(t, p), propose(t, p)
 	if !reflect.DeepEqual(a, b) || len(a) == 0 {
 		t.Errorf("%d and %d candidates that differ", len(a), len(b))
 	}
@@ -71,7 +91,7 @@ func TestProposeIsDeterministic(t *testing.T) {
 		}
 	}
 	p.Depth = 0.03
-	if got := Propose(p); len(got) != 0 {
+	if got := propose(t, p); len(got) != 0 {
 		t.Errorf("%d boxes 3 cm deep", len(got))
 	}
 }
