@@ -365,6 +365,10 @@ func (p lanePen) legendDecay() {
 func (p lanePen) absorption() {
 	_, y0, _, y1 := p.field()
 	a := scale{lo: 0, hi: 1.05, y0: y0, y1: y1}
+	if len(p.r.Absorbers) == 0 {
+		x0, _, x1, _ := p.field()
+		p.text((x0+x1)/2, (y0+y1)/2, "No absorbers yet", p.s.Text, atMiddle, mix(p.s.Paper, p.s.Ink, 0.6))
+	}
 	p.marks(a, []float64{0, 0.25, 0.5, 0.75, 1}, "%.2f")
 	dashes := [][]vg.Length{nil, {6 * px, 3 * px}, {2 * px, 2 * px}, {8 * px, 3 * px, 2 * px, 3 * px}}
 	var used []frame
