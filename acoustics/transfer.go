@@ -23,7 +23,7 @@ type transfer struct {
 	// unitsOnly leaves out all pairs but those of two units, which is all that a
 	// determinant needs.
 	unitsOnly bool
-	powers   [distantTerms]complex128
+	powers    [distantTerms]complex128
 }
 
 func (f *Field) newTransfer() *transfer {
