@@ -174,6 +174,23 @@ func (s *writer) tolerances() {
 	s.table([]column{{"Id", 0, false}, {"Step", 1, false}, {"Resonance", 0, true}, {"Q", 0, true}}, rows)
 }
 
+// criteria is the sheet of the published figures of merit.
+func (s *writer) criteria() {
+	s.sheet = "Criteria"
+	s.page()
+	s.heading("Criteria of the room without absorbers")
+	var rows [][]string
+	for _, c := range s.r.Criteria {
+		met, advice := map[acoustics.Verdict]string{acoustics.Met: "yes", acoustics.NotMet: "no"}[c.Verdict], ""
+		if c.Verdict == acoustics.NotMet {
+			advice = c.Advice
+		}
+		rows = append(rows, []string{met, c.Title, Measured(c.Figure, c.Unit, s.sys), Measured(c.Limit, c.Unit, s.sys), advice, c.Source})
+	}
+	s.table([]column{{"Met", 0, false}, {"Criterion", 32, false}, {"Figure", 0, true}, {"Limit", 0, true}, {"What to do", 26, false}, {"Source", 26, false}}, rows)
+	s.paragraph("A figure without a limit is for information. Criteria guide a design; a room that meets them all still wants listening and measuring.", textSize)
+}
+
 // cautions is the last sheet.
 func (s *writer) cautions() {
 	s.sheet = "Cautions"

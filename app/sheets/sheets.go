@@ -69,6 +69,7 @@ func Write(out io.Writer, r *study.Result, o Options) error {
 	}
 	s.w, s.h = doc.GetPageSize()
 	s.modeSchedule()
+	s.criteria()
 	s.planAndSection()
 	s.lanes()
 	s.absorberList()

@@ -92,7 +92,7 @@ func TestSetOfSample(t *testing.T) {
 			t.Errorf("the T60 of %v, %.2f s, is not there", m.Mode, m.Oscillator.T60())
 		}
 	}
-	for _, want := range []string{p.Title, "Mode schedule", "Plan and section", "Absorbers", "Cautions", "A1", "A2", "153", "118.6 mm", "109 mm", "116 mm",
+	for _, want := range []string{p.Title, "Mode schedule", "Plan and section", "Absorbers", "Criteria", "Schroeder frequency", "Cautions", "A1", "A2", "153", "118.6 mm", "109 mm", "116 mm",
 		"asbestos", "licensed", "Calculated", "Mineral fibre", "5.30 m", "desk"} {
 		if !strings.Contains(text, want) {
 			t.Errorf("the set does not say %q", want)

@@ -2,6 +2,8 @@ package sheets
 
 import (
 	"fmt"
+	"math"
+	"strings"
 
 	"stillroom/app/project"
 	"stillroom/app/units"
@@ -114,4 +116,27 @@ func Step(d resonators.Sensitivity, s units.System) (words string, steps float64
 		}
 	}
 	return d.Words(text), size / d.Step
+}
+
+// Measured writes a criterion's figure in the units of a system: lengths, areas
+// and volumes in theirs, whole numbers of things without decimals, a dash for
+// none.
+func Measured(v float64, unit string, s units.System) string {
+	switch {
+	case math.IsNaN(v) || math.IsInf(v, 0):
+		return "–"
+	case unit == "m":
+		return units.Length(v, s)
+	case unit == "m²":
+		return units.Area(v, s)
+	case unit == "m³":
+		return units.Volume(v, s)
+	case unit == "bands" || unit == "pairs" || unit == "modes":
+		return fmt.Sprintf("%.0f", v)
+	case unit == "Hz" || unit == "°":
+		return strings.Replace(fmt.Sprintf("%.0f %s", v, unit), " °", "°", 1)
+	case unit == "":
+		return fmt.Sprintf("%.2f", v)
+	}
+	return fmt.Sprintf("%.2f %s", v, unit)
 }

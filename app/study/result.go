@@ -52,6 +52,10 @@ type Result struct {
 	// PolesCounted and PolesFound: the argument principle's count and what was followed.
 	PolesCounted, PolesFound int
 
+	// Criteria are the published figures of merit of the bare room, its loudspeakers
+	// and its first seat.
+	Criteria []acoustics.Criterion
+
 	// Findings are plain sentences, worst first.
 	Findings []Finding
 	// Cautions are limits of the models that apply to this project, plain sentences.

@@ -59,6 +59,7 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 
 	r := newResult(p, o, shell, kit, field)
 	r.rate(shell.limit)
+	r.judge(shell.criteria)
 	r.settle(field.field, kit.units)
 	r.assign(kit.units)
 	r.Stage = StageLevel

@@ -34,6 +34,7 @@ type shellPart struct {
 	modes     []acoustics.DampedMode
 	bands     []BandRow
 	schroeder float64
+	criteria  []acoustics.Criterion
 	limit     acoustics.LimitCurve
 }
 
@@ -58,6 +59,7 @@ func shellStage(p project.Project, o Options, past *shellPart) (*shellPart, erro
 	}
 	s.modes = s.room.Modes(o.ModesToHz)
 	s.schroeder = s.room.SchroederHz()
+	s.criteria = s.room.Criteria()
 	s.limit = limitCurve(p.Limits)
 	s.bands = countBands(s.room)
 	return s, nil

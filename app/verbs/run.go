@@ -41,6 +41,7 @@ func verbs() []verb {
 		{"modes", "modes FILE [--to HZ] [--seat ID] [--as text|csv|json]", "mode schedule, bare and treated", runModes},
 		{"level", "level FILE [--from HZ] [--to HZ] [--points N] [--seat ID] [--as csv|json]", "level at the seat, bare and treated", runLevel},
 		{"absorbers", "absorbers FILE [--as text|csv|json]", "resonance, Q, absorption and ratings of each absorber", runAbsorbers},
+		{"check", "check FILE [--as text|csv|json]", "criteria: figure, limit, source, met or not", runCheck},
 		{"sheets", "sheets FILE --out FILE.pdf [--paper a4|letter] [--units metric|us]", "the printed set", runSheets},
 		{"figure", "figure FILE --lane NAME --out FILE.png|svg|pdf", "one lane or drawing as a picture", runFigure},
 		{"sample", "sample [NAME]", "writes a sample project to the current folder", runSample},

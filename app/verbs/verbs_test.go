@@ -184,6 +184,46 @@ func TestAbsorbersJSON(t *testing.T) {
 	}
 }
 
+// The criteria in their promised order, met, not met or null for information; the
+// call is done whether or not they are met.
+func TestCheckJSON(t *testing.T) {
+	ids := []string{"bonello-counts", "bonello-coincident", "ratio-low", "ratio-high", "length", "width", "integer-ratio", "schroeder", "modal-overlap", "reverberation"}
+	for _, name := range samples.Names() {
+		file := sampleFile(t, name)
+		status, out, errs := run(t, "", "check", file, "--as", "json")
+		if status != 0 {
+			t.Fatalf("%s: status %d, %s", name, status, errs)
+		}
+		v := decode(t, out)
+		wantKeys(t, "check", v, "criteria")
+		found := map[string]map[string]any{}
+		for _, c := range v["criteria"].([]any) {
+			wantKeys(t, "a criterion", c, "id", "title", "source", "figure", "limit", "unit", "met")
+			row := c.(map[string]any)
+			found[row["id"].(string)] = row
+			if (row["met"] == nil) != (row["limit"] == nil) {
+				t.Errorf("%s: %v has limit %v and met %v", name, row["id"], row["limit"], row["met"])
+			}
+		}
+		for _, id := range ids {
+			if found[id] == nil {
+				t.Errorf("%s: no criterion %q", name, id)
+			}
+		}
+		for _, id := range []string{"schroeder", "modal-overlap"} {
+			if found[id]["met"] != nil {
+				t.Errorf("%s: %s is judged", name, id)
+			}
+		}
+		if _, text, _ := run(t, "", "check", file); !strings.Contains(text, "What to do") || !strings.Contains(text, "Schroeder frequency") {
+			t.Errorf("%s: the table does not say what to do", name)
+		}
+		if _, table, _ := run(t, "", "check", file, "--as", "csv"); strings.Count(table, "\n") != len(found)+1 {
+			t.Errorf("%s: %d lines of CSV for %d criteria", name, strings.Count(table, "\n"), len(found))
+		}
+	}
+}
+
 // A seat is chosen by its id.
 func TestSeat(t *testing.T) {
 	file := sampleFile(t, "listening-room")
@@ -227,7 +267,7 @@ func TestWrongCalls(t *testing.T) {
 		{}, {"measure"}, {"modes"}, {"modes", file, file}, {"modes", file, "--seat", "roof"}, {"modes", file, "--as", "xml"},
 		{"modes", file, "--to", "x"}, {"modes", file, "--to", "-3"}, {"modes", file, "--loud"},
 		{"level", file, "--from", "100", "--to", "100"}, {"level", file, "--from", "200", "--to", "100"}, {"level", file, "--points", "1"}, {"level", file, "--as", "text"},
-		{"absorbers", file, "--as", "yaml"}, {"sheets", file}, {"sheets", file, "--out", "a.doc"}, {"figure", file, "--lane", "modes"},
+		{"absorbers", file, "--as", "yaml"}, {"check"}, {"check", file, "--as", "xml"}, {"sheets", file}, {"sheets", file, "--out", "a.doc"}, {"figure", file, "--lane", "modes"},
 		{"figure", file, "--lane", "sky", "--out", "a.png"}, {"figure", file, "--lane", "modes", "--out", "a.gif"}, {"sample", "ballroom"}, {"sample", "a", "b"},
 	} {
 		status, out, errs := run(t, "", c...)
@@ -352,7 +392,7 @@ func TestHelp(t *testing.T) {
 	if status != 0 {
 		t.Errorf("status %d", status)
 	}
-	for _, v := range []string{"modes", "level", "absorbers", "sheets", "figure", "sample"} {
+	for _, v := range []string{"modes", "level", "absorbers", "check", "sheets", "figure", "sample"} {
 		if !strings.Contains(out, "stillroom "+v+" ") || !verbs.Known(v) {
 			t.Errorf("the usage does not explain %s", v)
 		}

@@ -37,9 +37,11 @@ type controller struct {
 	details   *details
 	modes     *schedule
 	absorbers *schedule
+	criteria  *schedule
 	line      *widget.Label // of findings
 	mend      *widget.Button
 	found     int // which finding the line shows
+	judged    int // which criterion is selected
 	status    *canvas.Text
 	working   *canvas.Text
 
@@ -57,7 +59,7 @@ const slowStudy = 60 * time.Millisecond
 // newController makes the window's content; do puts functions on the UI
 // goroutine.
 func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *controller {
-	c := &controller{app: a, win: w, do: do, settings: s, history: project.NewHistory(project.New(), true), started: time.Now()}
+	c := &controller{app: a, win: w, do: do, settings: s, history: project.NewHistory(project.New(), true), started: time.Now(), judged: -1}
 	c.ctx, c.end = context.WithCancel(context.Background())
 	c.state = State{Selection: Selection{-1, -1, -1, -1, -1}, FromHz: rulerFrom, ToHz: rulerTo, US: s.US, Dark: s.Dark}
 	c.runner = &runner{do: do, options: study.Options{Points: 400, ModesToHz: 250}, show: c.result, busy: c.busy}
@@ -71,6 +73,7 @@ func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *con
 	c.absorbers = newSchedule(absorberColumns(), func(i int) {
 		c.selected(Selection{c.state.Selection.Mode, i, -1, -1, -1})
 	})
+	c.criteria = newSchedule(criteriaColumns(), func(i int) { c.judged = i; c.schedules() })
 	c.compose()
 	return c
 }
@@ -88,7 +91,7 @@ func (c *controller) compose() {
 	c.status, c.working = canvas.NewText("", nil), canvas.NewText("", nil)
 	c.status.TextSize, c.working.TextSize = 10.5, 10.5
 	foot := container.NewBorder(nil, nil, c.status, c.working)
-	tabs := container.NewAppTabs(container.NewTabItem("Modes", c.modes), container.NewTabItem("Absorbers", c.absorbers))
+	tabs := container.NewAppTabs(container.NewTabItem("Modes", c.modes), container.NewTabItem("Absorbers", c.absorbers), container.NewTabItem("Criteria", c.criteria))
 	c.inner = container.NewHSplit(c.drawing, c.lanes)
 	c.lower = container.NewVSplit(c.inner, tabs)
 	c.outer = container.NewHSplit(c.lower, c.details.root)
@@ -232,6 +235,7 @@ func (c *controller) schedules() {
 	s := c.state
 	c.modes.show(modeRows(s), s.Selection.Mode, s.Dark)
 	c.absorbers.show(absorberRows(s), s.Selection.Absorber, s.Dark)
+	c.criteria.show(criteriaRows(s), c.judged, s.Dark)
 }
 
 // fits reports whether a result has what the project's lists ask for.

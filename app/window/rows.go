@@ -5,6 +5,7 @@ import (
 	"math"
 	"strings"
 
+	"stillroom/acoustics"
 	"stillroom/app/sheets"
 	"stillroom/app/study"
 	"stillroom/app/units"
@@ -93,6 +94,28 @@ func absorberRows(s State) []scheduleRow {
 				strings.Join(sheets.Dimensions(p, s.system()), "; ")},
 			keys: []float64{float64(i), float64(i), float64(p.Units), float64(p.Surface), a.AreaM2, f0Key, qKey, f0Key, a.Report.AlphaW, targetKey, 0},
 		})
+	}
+	return rows
+}
+
+func criteriaColumns() []scheduleColumn {
+	return []scheduleColumn{{"Met", 6, false}, {"Criterion", 46, false}, {"Figure", 10, true}, {"Limit", 10, true}, {"What to do", 40, false}, {"Source", 34, false}}
+}
+
+// criteriaRows lists the criteria; what is not met is strong.
+func criteriaRows(s State) []scheduleRow {
+	if s.Result == nil {
+		return nil
+	}
+	var rows []scheduleRow
+	for i, c := range s.Result.Criteria {
+		met, advice := map[acoustics.Verdict]string{acoustics.Met: "yes", acoustics.NotMet: "no"}[c.Verdict], ""
+		if c.Verdict == acoustics.NotMet {
+			advice = c.Advice
+		}
+		rows = append(rows, scheduleRow{item: i, strong: c.Verdict == acoustics.NotMet,
+			cells: []string{met, c.Title, sheets.Measured(c.Figure, c.Unit, s.system()), sheets.Measured(c.Limit, c.Unit, s.system()), advice, c.Source},
+			keys:  []float64{float64(c.Verdict), float64(i), c.Figure, c.Limit, float64(i), float64(i)}})
 	}
 	return rows
 }

@@ -1,0 +1,233 @@
+package acoustics
+
+import "math"
+
+// Verdict says whether a criterion is met.
+type Verdict int
+
+// The verdicts. Information is a figure without a limit.
+const (
+	Information Verdict = iota
+	Met
+	NotMet
+)
+
+func verdict(met bool) Verdict {
+	if met {
+		return Met
+	}
+	return NotMet
+}
+
+// Criterion is one published figure of merit of a room.
+type Criterion struct {
+	ID, Title, Source string
+	Figure            float64
+	Limit             float64 // NaN where there is none
+	Unit              string  // of both, "" for a pure number
+	Verdict           Verdict
+	Advice            string // what to do where it is not met, one sentence
+}
+
+// Sources of the criteria. Those of the two recommendations are from memory.
+const (
+	bonello1981  = "Bonello, J. Audio Eng. Soc. 29 (1981) 597"
+	proportions  = "EBU Tech 3276; ITU-R BS.1116-3"
+	bs1116       = "ITU-R BS.1116-3"
+	ebu3276      = "EBU Tech 3276"
+	schroeder62  = "Schroeder & Kuttruff, J. Acoust. Soc. Am. 34 (1962) 76"
+	coincidence  = 1e-6 // relative distance of frequencies that count as one
+	bonelloFew   = 5    // modes in a band from which on coincidence is allowed
+	integerNear  = 0.05 // how near a whole ratio is too near
+	reverbWithin = 0.05 // s
+)
+
+// Criteria returns the criteria that shape, surfaces and air decide, in a fixed
+// order. L is the larger floor dimension, W the smaller.
+//
+// Sources: each criterion's own.
+func (r Room) Criteria() []Criterion {
+	list := r.bonello()
+	list = append(list, r.Box.proportions()...)
+	return append(list, r.statistics()...)
+}
+
+// bonello returns the two criteria of Bonello 1981 over the third octaves from 10
+// to 200 Hz, and how many neighbours overlap.
+func (r Room) bonello() []Criterion {
+	var (
+		bands         = ThirdOctaves(10, 200)
+		modes         = r.Modes(bands[len(bands)-1].Upper)
+		before, falls = 0, 0
+		pairs, close  = 0, 0
+	)
+	for _, b := range bands {
+		var in []DampedMode
+		for _, m := range modes {
+			if m.Hz >= b.Lower && m.Hz < b.Upper {
+				in = append(in, m)
+			}
+		}
+		if len(in) < before {
+			falls++
+		}
+		before = len(in)
+		if len(in) < bonelloFew {
+			pairs += coincidentPairs(in)
+		}
+	}
+	for i := 1; i < len(modes); i++ {
+		a, b := modes[i-1], modes[i]
+		if b.Hz-a.Hz < (a.Oscillator().HalfPowerWidth()+b.Oscillator().HalfPowerWidth())/2 {
+			close++
+		}
+	}
+	return []Criterion{
+		{ID: "bonello-counts", Title: "Third octaves from 10 to 200 Hz in which the mode count falls", Source: bonello1981,
+			Figure: float64(falls), Limit: 0, Unit: "bands", Verdict: verdict(falls == 0),
+			Advice: "Change a dimension until the count rises from band to band."},
+		{ID: "bonello-coincident", Title: "Coincident modes in bands of fewer than five", Source: bonello1981,
+			Figure: float64(pairs), Limit: 0, Unit: "pairs", Verdict: verdict(pairs == 0),
+			Advice: "Two dimensions have a common measure: change one of them by a few centimetres."},
+		{ID: "modes-overlapping", Title: "Neighbouring modes to 224 Hz closer than their mean half-power width", Source: "common practice",
+			Figure: float64(close), Limit: math.NaN(), Unit: "pairs"},
+	}
+}
+
+// coincidentPairs returns how many pairs of modes have the same frequency.
+func coincidentPairs(modes []DampedMode) int {
+	n := 0
+	for i, a := range modes {
+		for _, b := range modes[i+1:] {
+			if math.Abs(b.Hz-a.Hz) <= coincidence*a.Hz {
+				n++
+			}
+		}
+	}
+	return n
+}
+
+// proportions returns the criteria of the room's shape,
+//
+//	1.1·W/H ≤ L/H ≤ 4.5·W/H − 4, L < 3H, W < 3H
+//
+// and no two dimensions within 5 % of a whole ratio.
+func (b Box) proportions() []Criterion {
+	var (
+		l, w, h  = math.Max(b.Length, b.Width), math.Min(b.Length, b.Width), b.Height
+		low, top = 1.1 * w / h, 4.5*w/h - 4
+		whole    = b.wholeRatio()
+	)
+	return []Criterion{
+		{ID: "ratio-low", Title: "Length over height, at least 1.1 times width over height", Source: proportions,
+			Figure: l / h, Limit: low, Verdict: verdict(l/h >= low), Advice: "Make the room longer, or narrower."},
+		{ID: "ratio-high", Title: "Length over height, at most 4.5 times width over height less 4", Source: proportions,
+			Figure: l / h, Limit: top, Verdict: verdict(l/h <= top), Advice: "Make the room shorter, or wider for its height."},
+		{ID: "length", Title: "Length below three times the height", Source: proportions,
+			Figure: l, Limit: 3 * h, Unit: "m", Verdict: verdict(l < 3*h), Advice: "Divide the length, or raise the ceiling."},
+		{ID: "width", Title: "Width below three times the height", Source: proportions,
+			Figure: w, Limit: 3 * h, Unit: "m", Verdict: verdict(w < 3*h), Advice: "Divide the width, or raise the ceiling."},
+		{ID: "integer-ratio", Title: "Least distance of two dimensions' ratio from a whole number", Source: ebu3276,
+			Figure: whole, Limit: integerNear, Verdict: verdict(whole > integerNear),
+			Advice: "Change one of the two dimensions by a twentieth or more."},
+	}
+}
+
+// wholeRatio returns the least |r/n − 1| over the three ratios r of a larger to a
+// smaller dimension, n the nearest whole number.
+func (b Box) wholeRatio() float64 {
+	var (
+		d     = b.Dimensions()
+		least = math.Inf(1)
+	)
+	for i := range d {
+		for j := range i {
+			ratio := math.Max(d[i], d[j]) / math.Min(d[i], d[j])
+			n := math.Max(1, math.Round(ratio))
+			least = math.Min(least, math.Abs(ratio/n-1))
+		}
+	}
+	return least
+}
+
+// statistics returns the Schroeder frequency with the modal overlap there, the
+// reverberation time against that wanted, 0.25·∛(V/100 m³) s, and the sizes that
+// the recommendations name.
+func (r Room) statistics() []Criterion {
+	var (
+		t       = r.midTime()
+		f       = r.SchroederHz()
+		overlap = 3 * math.Ln10 / math.Pi / t * r.Box.ModeDensity(r.Air.SpeedOfSound, f)
+		v       = r.Box.Volume()
+		wanted  = 0.25 * math.Cbrt(v/100)
+		floor   = r.Box.Area(Floor)
+	)
+	return []Criterion{
+		{ID: "schroeder", Title: "Schroeder frequency", Source: schroeder62, Figure: f, Limit: math.NaN(), Unit: "Hz"},
+		{ID: "modal-overlap", Title: "Modal overlap at the Schroeder frequency", Source: schroeder62, Figure: overlap, Limit: math.NaN()},
+		{ID: "reverberation", Title: "Reverberation time by Sabine with air, mean of 500 and 1000 Hz, within 0.05 s of that wanted for the volume", Source: proportions,
+			Figure: t, Limit: wanted, Unit: "s", Verdict: verdict(math.Abs(t-wanted) <= reverbWithin),
+			Advice: reverbAdvice(t, wanted)},
+		{ID: "floor-area", Title: "Floor area of a room for two-channel listening, at least", Source: bs1116 + " (from memory)",
+			Figure: floor, Limit: 20, Unit: "m²", Verdict: verdict(floor >= 20), Advice: "A smaller room has its modes further apart and nearer to what is heard: treat them one by one."},
+		{ID: "volume", Title: "Volume of a reference room, below", Source: ebu3276 + " (from memory)",
+			Figure: v, Limit: 300, Unit: "m³", Verdict: verdict(v < 300), Advice: "A larger room is a hall rather than a listening room: other criteria apply."},
+	}
+}
+
+func reverbAdvice(t, wanted float64) string {
+	if t > wanted {
+		return "Add absorption at middle frequencies, evenly over the surfaces."
+	}
+	return "Take absorption away, or make some of the surfaces hard."
+}
+
+// StereoCriteria returns the criteria of a pair of loudspeakers and a seat: base,
+// angle, distance and how far the loudspeakers stand from the walls.
+//
+// Source: ITU-R BS.1116-3, from memory.
+func (b Box) StereoCriteria(left, right, seat Point) []Criterion {
+	var (
+		base     = distance(left, right)
+		nearer   = math.Min(distance(left, seat), distance(right, seat))
+		further  = math.Max(distance(left, seat), distance(right, seat))
+		angle    = angleAt(seat, left, right) * 180 / math.Pi
+		clear    = math.Min(b.clearance(left), b.clearance(right))
+		source   = bs1116 + " (from memory)"
+		distance = (nearer + further) / 2
+	)
+	return []Criterion{
+		{ID: "stereo-base-low", Title: "Base of the loudspeaker pair, at least", Source: source, Figure: base, Limit: 2, Unit: "m",
+			Verdict: verdict(base >= 2), Advice: "Move the loudspeakers apart."},
+		{ID: "stereo-base-high", Title: "Base of the loudspeaker pair, at most", Source: source, Figure: base, Limit: 3, Unit: "m",
+			Verdict: verdict(base <= 3), Advice: "Move the loudspeakers together."},
+		{ID: "stereo-angle", Title: "Angle of the pair at the seat, within 5° of", Source: source, Figure: angle, Limit: 60, Unit: "°",
+			Verdict: verdict(math.Abs(angle-60) <= 5), Advice: "Seat and loudspeakers should make a triangle of equal sides."},
+		{ID: "listening-distance-low", Title: "Listening distance, at least", Source: source, Figure: distance, Limit: 2, Unit: "m",
+			Verdict: verdict(distance >= 2), Advice: "Move the seat further from the pair."},
+		{ID: "listening-distance-high", Title: "Listening distance, at most 1.7 times the base", Source: source, Figure: distance, Limit: 1.7 * base, Unit: "m",
+			Verdict: verdict(distance <= 1.7*base), Advice: "Move the seat nearer to the pair."},
+		{ID: "stereo-symmetry", Title: "Difference of the two loudspeakers' distances from the seat", Source: "common practice",
+			Figure: further - nearer, Limit: 0.05, Unit: "m", Verdict: verdict(further-nearer <= 0.05), Advice: "Move the seat onto the pair's mid-plane."},
+		{ID: "loudspeaker-walls", Title: "Distance of a loudspeaker from the nearest wall, at least", Source: source, Figure: clear, Limit: 1, Unit: "m",
+			Verdict: verdict(clear >= 1), Advice: "Nearer to a wall a loudspeaker drives the modes along it harder: allow for it, or move it."},
+	}
+}
+
+// clearance returns the distance of a point from the nearest upright wall, m.
+func (b Box) clearance(p Point) float64 {
+	return math.Min(math.Min(p[0], b.Length-p[0]), math.Min(p[1], b.Width-p[1]))
+}
+
+func distance(a, b Point) float64 {
+	return math.Sqrt((a[0]-b[0])*(a[0]-b[0]) + (a[1]-b[1])*(a[1]-b[1]) + (a[2]-b[2])*(a[2]-b[2]))
+}
+
+// angleAt returns the angle in rad between two points as seen from a third.
+func angleAt(at, a, b Point) float64 {
+	var dot float64
+	for i := range at {
+		dot += (a[i] - at[i]) * (b[i] - at[i])
+	}
+	return math.Acos(math.Max(-1, math.Min(1, dot/(distance(at, a)*distance(at, b)))))
+}

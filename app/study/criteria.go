@@ -1,0 +1,55 @@
+package study
+
+import (
+	"context"
+	"slices"
+
+	"stillroom/acoustics"
+	"stillroom/app/project"
+)
+
+// judge gathers the criteria: the room's own, the modes' decay, and, where there
+// are two loudspeakers, the pair's with the first seat.
+func (r *Result) judge(room []acoustics.Criterion) {
+	problems := 0
+	for _, m := range r.Modes {
+		if m.Problem {
+			problems++
+		}
+	}
+	source := "the project's own limits"
+	if l, ok := acoustics.Limit(r.Project.Limits.Curve); ok {
+		source = l.Source
+	}
+	decay := acoustics.Criterion{ID: "modal-decay", Title: "Modes that ring over their limit and sound at a seat", Source: source,
+		Figure: float64(problems), Limit: 0, Unit: "modes", Verdict: acoustics.Met,
+		Advice: "Tune an absorber to each of them, worst first."}
+	if problems > 0 {
+		decay.Verdict = acoustics.NotMet
+	}
+	r.Criteria = append(slices.Clone(room), decay)
+	if l := r.Project.Loudspeakers; len(l) == 2 {
+		r.Criteria = append(r.Criteria, r.Room.Box.StereoCriteria(l[0].At, l[1].At, r.Project.Seats[0].At)...)
+	}
+}
+
+// Criteria computes only the criteria of a project.
+func Criteria(p project.Project) ([]acoustics.Criterion, error) {
+	p.Absorbers = nil // the criteria are those of the bare room
+	o := Options{Points: 2}.withDefaults()
+	if err := tooLarge(p, max(o.ToHz, o.ModesToHz), mostModes); err != nil {
+		return nil, err
+	}
+	shell, err := shellStage(p, o, nil)
+	if err != nil {
+		return nil, err
+	}
+	field, err := fieldStage(context.Background(), p, o, shell, new(kitPart), nil)
+	if err != nil {
+		return nil, err
+	}
+	r := newResult(p, o, shell, new(kitPart), field)
+	r.rate(shell.limit)
+	r.judge(shell.criteria)
+	return r.Criteria, nil
+}
