@@ -83,13 +83,13 @@ func (r Room) bonello() []Criterion {
 		}
 	}
 	return []Criterion{
-		{ID: "bonello-counts", Title: "Third octaves from 10 to 200 Hz in which the mode count falls", Source: bonello1981,
+		{ID: "bonello-counts", Title: "Third octaves in which the mode count falls, 10 to 200 Hz", Source: bonello1981,
 			Figure: float64(falls), Limit: 0, Unit: "bands", Verdict: verdict(falls == 0),
 			Advice: "Change a dimension until the count rises from band to band."},
 		{ID: "bonello-coincident", Title: "Coincident modes in bands of fewer than five", Source: bonello1981,
 			Figure: float64(pairs), Limit: 0, Unit: "pairs", Verdict: verdict(pairs == 0),
-			Advice: "Two dimensions have a common measure: change one of them by a few centimetres."},
-		{ID: "modes-overlapping", Title: "Neighbouring modes to 224 Hz closer than their mean half-power width", Source: "common practice",
+			Advice: "Change a dimension by a few centimetres."},
+		{ID: "modes-overlapping", Title: "Neighbours closer than their half-power width, to 224 Hz", Source: "common practice",
 			Figure: float64(close), Limit: math.NaN(), Unit: "pairs"},
 	}
 }
@@ -119,17 +119,17 @@ func (b Box) proportions() []Criterion {
 		whole    = b.wholeRatio()
 	)
 	return []Criterion{
-		{ID: "ratio-low", Title: "Length over height, at least 1.1 times width over height", Source: proportions,
+		{ID: "ratio-low", Title: "Length over height, at least 1.1 width over height", Source: proportions,
 			Figure: l / h, Limit: low, Verdict: verdict(l/h >= low), Advice: "Make the room longer, or narrower."},
-		{ID: "ratio-high", Title: "Length over height, at most 4.5 times width over height less 4", Source: proportions,
+		{ID: "ratio-high", Title: "Length over height, at most 4.5 width over height less 4", Source: proportions,
 			Figure: l / h, Limit: top, Verdict: verdict(l/h <= top), Advice: "Make the room shorter, or wider for its height."},
 		{ID: "length", Title: "Length below three times the height", Source: proportions,
 			Figure: l, Limit: 3 * h, Unit: "m", Verdict: verdict(l < 3*h), Advice: "Divide the length, or raise the ceiling."},
 		{ID: "width", Title: "Width below three times the height", Source: proportions,
 			Figure: w, Limit: 3 * h, Unit: "m", Verdict: verdict(w < 3*h), Advice: "Divide the width, or raise the ceiling."},
-		{ID: "integer-ratio", Title: "Least distance of two dimensions' ratio from a whole number", Source: ebu3276,
+		{ID: "integer-ratio", Title: "Distance of the dimensions' ratios from whole numbers", Source: ebu3276,
 			Figure: whole, Limit: integerNear, Verdict: verdict(whole > integerNear),
-			Advice: "Change one of the two dimensions by a twentieth or more."},
+			Advice: "Change a dimension by a twentieth or more."},
 	}
 }
 
@@ -165,19 +165,20 @@ func (r Room) statistics() []Criterion {
 	return []Criterion{
 		{ID: "schroeder", Title: "Schroeder frequency", Source: schroeder62, Figure: f, Limit: math.NaN(), Unit: "Hz"},
 		{ID: "modal-overlap", Title: "Modal overlap at the Schroeder frequency", Source: schroeder62, Figure: overlap, Limit: math.NaN()},
-		{ID: "reverberation", Title: "Reverberation time by Sabine with air, mean of 500 and 1000 Hz, within 0.05 s of that wanted for the volume", Source: proportions,
+		// T by Sabine with air, mean of 500 and 1000 Hz.
+		{ID: "reverberation", Title: "Reverberation time, within 0.05 s of that for the volume", Source: proportions,
 			Figure: t, Limit: wanted, Unit: "s", Verdict: verdict(math.Abs(t-wanted) <= reverbWithin),
 			Advice: reverbAdvice(t, wanted)},
-		{ID: "floor-area", Title: "Floor area of a room for two-channel listening, at least", Source: bs1116 + " (from memory)",
-			Figure: floor, Limit: 20, Unit: "m²", Verdict: verdict(floor >= 20), Advice: "A smaller room has its modes further apart and nearer to what is heard: treat them one by one."},
+		{ID: "floor-area", Title: "Floor area for two-channel listening, at least", Source: bs1116 + " (from memory)",
+			Figure: floor, Limit: 20, Unit: "m²", Verdict: verdict(floor >= 20), Advice: "Treat the modes of a small room one by one."},
 		{ID: "volume", Title: "Volume of a reference room, below", Source: ebu3276 + " (from memory)",
-			Figure: v, Limit: 300, Unit: "m³", Verdict: verdict(v < 300), Advice: "A larger room is a hall rather than a listening room: other criteria apply."},
+			Figure: v, Limit: 300, Unit: "m³", Verdict: verdict(v < 300), Advice: "A hall has other criteria."},
 	}
 }
 
 func reverbAdvice(t, wanted float64) string {
 	if t > wanted {
-		return "Add absorption at middle frequencies, evenly over the surfaces."
+		return "Add absorption at middle frequencies."
 	}
 	return "Take absorption away, or make some of the surfaces hard."
 }
@@ -202,7 +203,7 @@ func (b Box) StereoCriteria(left, right, seat Point) []Criterion {
 		{ID: "stereo-base-high", Title: "Base of the loudspeaker pair, at most", Source: source, Figure: base, Limit: 3, Unit: "m",
 			Verdict: verdict(base <= 3), Advice: "Move the loudspeakers together."},
 		{ID: "stereo-angle", Title: "Angle of the pair at the seat, within 5° of", Source: source, Figure: angle, Limit: 60, Unit: "°",
-			Verdict: verdict(math.Abs(angle-60) <= 5), Advice: "Seat and loudspeakers should make a triangle of equal sides."},
+			Verdict: verdict(math.Abs(angle-60) <= 5), Advice: "Make seat and pair a triangle of equal sides."},
 		{ID: "listening-distance-low", Title: "Listening distance, at least", Source: source, Figure: distance, Limit: 2, Unit: "m",
 			Verdict: verdict(distance >= 2), Advice: "Move the seat further from the pair."},
 		{ID: "listening-distance-high", Title: "Listening distance, at most 1.7 times the base", Source: source, Figure: distance, Limit: 1.7 * base, Unit: "m",
@@ -210,7 +211,7 @@ func (b Box) StereoCriteria(left, right, seat Point) []Criterion {
 		{ID: "stereo-symmetry", Title: "Difference of the two loudspeakers' distances from the seat", Source: "common practice",
 			Figure: further - nearer, Limit: 0.05, Unit: "m", Verdict: verdict(further-nearer <= 0.05), Advice: "Move the seat onto the pair's mid-plane."},
 		{ID: "loudspeaker-walls", Title: "Distance of a loudspeaker from the nearest wall, at least", Source: source, Figure: clear, Limit: 1, Unit: "m",
-			Verdict: verdict(clear >= 1), Advice: "Nearer to a wall a loudspeaker drives the modes along it harder: allow for it, or move it."},
+			Verdict: verdict(clear >= 1), Advice: "Move it away from the wall, or allow for it."},
 	}
 }
 

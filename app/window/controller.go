@@ -11,6 +11,7 @@ import (
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 
+	"stillroom/acoustics"
 	"stillroom/app/project"
 	"stillroom/app/study"
 )
@@ -73,7 +74,7 @@ func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *con
 	c.absorbers = newSchedule(absorberColumns(), func(i int) {
 		c.selected(Selection{c.state.Selection.Mode, i, -1, -1, -1})
 	})
-	c.criteria = newSchedule(criteriaColumns(), func(i int) { c.judged = i; c.schedules() })
+	c.criteria = newSchedule(criteriaColumns(), c.selectCriterion)
 	c.compose()
 	return c
 }
@@ -259,6 +260,20 @@ func (c *controller) selected(s Selection) {
 
 func (c *controller) selectMode(i int) {
 	c.selected(Selection{i, -1, -1, -1, -1})
+}
+
+// selectCriterion says a criterion in full at the foot.
+func (c *controller) selectCriterion(i int) {
+	c.judged = i
+	c.schedules()
+	if r := c.state.Result; r != nil && i < len(r.Criteria) {
+		x := r.Criteria[i]
+		text := x.Title
+		if x.Verdict == acoustics.NotMet {
+			text += ". " + x.Advice
+		}
+		c.say(text + " (" + x.Source + ")")
+	}
 }
 
 func (c *controller) ruler(from, to float64) {

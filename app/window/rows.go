@@ -99,7 +99,7 @@ func absorberRows(s State) []scheduleRow {
 }
 
 func criteriaColumns() []scheduleColumn {
-	return []scheduleColumn{{"Met", 6, false}, {"Criterion", 46, false}, {"Figure", 10, true}, {"Limit", 10, true}, {"What to do", 40, false}, {"Source", 34, false}}
+	return []scheduleColumn{{"Met", 5, false}, {"Criterion", 50, false}, {"Figure", 10, true}, {"Limit", 10, true}, {"What to do", 42, false}, {"Source", 30, false}}
 }
 
 // criteriaRows lists the criteria; what is not met is strong.
