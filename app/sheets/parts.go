@@ -189,6 +189,17 @@ func (s *writer) criteria() {
 	}
 	s.table([]column{{"Met", 0, false}, {"Criterion", 32, false}, {"Figure", 0, true}, {"Limit", 0, true}, {"What to do", 26, false}, {"Source", 26, false}}, rows)
 	s.paragraph("A figure without a limit is for information. Criteria guide a design; a room that meets them all still wants listening and measuring.", textSize)
+	s.heading("Reverberation time by octaves, seconds")
+	rows = nil
+	for _, r := range s.r.Reverberation {
+		meant := "yes"
+		if !r.Meant {
+			meant = "no: below the Schroeder frequency or across it"
+		}
+		rows = append(rows, []string{r.Nominal, fixed(r.Sabine, 2), fixed(r.Eyring, 2), fixed(r.ArauPuchades, 2), meant})
+	}
+	s.table([]column{{"Octave Hz", 0, true}, {"Sabine", 0, true}, {"Eyring", 0, true}, {"Arau-Puchades", 0, true}, {"Meant there", 1, false}}, rows)
+	s.paragraph("Estimates for a diffuse field, with the air's absorption and without the absorbers of this set. Sabine for weakly absorbing rooms, Eyring for even and Arau-Puchades for uneven absorption.", textSize)
 }
 
 // cautions is the last sheet.

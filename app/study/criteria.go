@@ -53,3 +53,15 @@ func Criteria(p project.Project) ([]acoustics.Criterion, error) {
 	r.judge(shell.criteria)
 	return r.Criteria, nil
 }
+
+// reverberation returns the times by octaves.
+func reverberation(r acoustics.Room) []ReverberationRow {
+	var rows []ReverberationRow
+	schroeder := r.SchroederHz()
+	for k := -3; k <= 2; k++ {
+		b := acoustics.Octave(k)
+		rows = append(rows, ReverberationRow{Nominal: b.Nominal, Hz: b.Centre, Sabine: r.SabineTime(b.Centre), Eyring: r.EyringTime(b.Centre),
+			ArauPuchades: r.ArauPuchadesTime(b.Centre), Meant: b.Lower >= schroeder})
+	}
+	return rows
+}

@@ -52,6 +52,9 @@ type Result struct {
 	// PolesCounted and PolesFound: the argument principle's count and what was followed.
 	PolesCounted, PolesFound int
 
+	// Reverberation is the diffuse-field estimate by octaves, 125 to 4000 Hz.
+	Reverberation []ReverberationRow
+
 	// Criteria are the published figures of merit of the bare room, its loudspeakers
 	// and its first seat.
 	Criteria []acoustics.Criterion
@@ -101,6 +104,15 @@ type BandRow struct {
 	CentreHz, LoHz, HiHz float64
 	Count                int     // modes in the band
 	Asymptote            float64 // three-term asymptote's difference over the band
+}
+
+// ReverberationRow is one octave's reverberation times, s, with air. They are
+// estimates for a diffuse field: below the Schroeder frequency they are not meant.
+type ReverberationRow struct {
+	Nominal                      string
+	Hz                           float64
+	Sabine, Eyring, ArauPuchades float64
+	Meant                        bool // the octave lies above the Schroeder frequency
 }
 
 // Levels are the level curves, dB re the free field of one unit-gain

@@ -99,9 +99,11 @@ func newResult(p project.Project, o Options, shell *shellPart, kit *kitPart, fie
 		VolumeM3:    shell.room.Box.Volume(),
 		AreaM2:      shell.room.Box.SurfaceArea(),
 		SchroederHz: shell.schroeder,
-		Bands:       shell.bands,
-		Levels:      Levels{Hz: field.hz, Bare: field.levels.Bare, Treated: field.levels.Treated},
-		Absorbers:   append([]AbsorberRow(nil), kit.rows...),
+
+		Reverberation: shell.reverb,
+		Bands:         shell.bands,
+		Levels:        Levels{Hz: field.hz, Bare: field.levels.Bare, Treated: field.levels.Treated},
+		Absorbers:     append([]AbsorberRow(nil), kit.rows...),
 	}
 	r.Modes = make([]ModeRow, len(shell.modes))
 	for i, m := range shell.modes {

@@ -35,6 +35,7 @@ type shellPart struct {
 	bands     []BandRow
 	schroeder float64
 	criteria  []acoustics.Criterion
+	reverb    []ReverberationRow
 	limit     acoustics.LimitCurve
 }
 
@@ -60,6 +61,7 @@ func shellStage(p project.Project, o Options, past *shellPart) (*shellPart, erro
 	s.modes = s.room.Modes(o.ModesToHz)
 	s.schroeder = s.room.SchroederHz()
 	s.criteria = s.room.Criteria()
+	s.reverb = reverberation(s.room)
 	s.limit = limitCurve(p.Limits)
 	s.bands = countBands(s.room)
 	return s, nil
