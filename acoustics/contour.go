@@ -68,8 +68,9 @@ func (f *Field) count(ctx context.Context, e rectangle, distants []distant) (int
 		return n, nil
 	}
 	corners := []complex128{complex(e.left, e.low), complex(e.right, e.low), complex(e.right, e.high), complex(e.left, e.high)}
-	// Each edge is cut into pieces of about this length, then refined.
-	const piece = 2 * math.Pi * 2 // rad/s
+	// Each edge is cut into pieces of about this length, rad/s, then refined: the
+	// right edge runs between zeros, the lower one close under them.
+	const piece = 4.0
 	var ends [][2]complex128
 	for i, a := range corners {
 		b := corners[(i+1)%4]
@@ -128,27 +129,67 @@ func wrap(x float64) float64 { return x - 2*math.Pi*math.Round(x/(2*math.Pi)) }
 
 // recover looks for the zeros that the count says are missing, by Newton's
 // method on the determinant with the known zeros divided out and the bare
-// modes' poles multiplied in, from starts where the paths were lost, beside the
-// units' roots, which crowd, and then all over the contour.
+// modes' poles multiplied in: from where the paths were lost, from beside the
+// units' roots, which crowd, and then from the middle of the cells that counting
+// in ever smaller parts of the contour narrows them down to.
 func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted int, distants []distant) ([]path, error) {
 	w := f.newFollower(distants)
-	for _, s := range f.recoveryStarts(paths, e) {
-		if inside(paths, e) >= counted {
-			break
-		}
-		if err := ctx.Err(); err != nil {
-			return paths, err
-		}
-		if root, ok := w.deflated(s, paths, e); ok && e.holds(root) {
+	try := func(s complex128, within rectangle) {
+		if root, ok := w.deflated(s, paths, e); ok && within.holds(root) {
 			paths = f.adopt(paths, root)
 		}
 	}
-	return paths, nil
+	for _, s := range f.recoveryStarts(paths) {
+		if inside(paths, e) >= counted || ctx.Err() != nil {
+			break
+		}
+		try(s, e)
+	}
+	var narrow func(c rectangle, n int) error
+	narrow = func(c rectangle, n int) error {
+		if inside(paths, c) >= n {
+			return nil
+		}
+		if max(c.right-c.left, c.high-c.low) < narrowest {
+			try(complex((c.left+c.right)/2, (c.low+c.high)/2), e)
+			return nil
+		}
+		for _, part := range c.halves() {
+			n, err := f.count(ctx, part, distants)
+			if err != nil {
+				return err
+			}
+			if err := narrow(part, n); err != nil {
+				return err
+			}
+		}
+		return nil
+	}
+	if err := narrow(e, counted); err != nil {
+		return paths, err
+	}
+	return paths, ctx.Err()
 }
 
-// recoveryStarts lists where paths were lost, places beside the units' roots,
-// then a grid over the contour.
-func (f *Field) recoveryStarts(paths []path, e rectangle) []complex128 {
+// narrowest is the size of a cell, rad/s, from whose middle a zero in it is found.
+const narrowest = 4.0
+
+// halves cuts a contour across its longer side, a little off the middle, where
+// symmetric rooms have no zeros.
+func (e rectangle) halves() [2]rectangle {
+	a, b := e, e
+	if e.right-e.left > e.high-e.low {
+		cut := e.left + 0.497*(e.right-e.left)
+		a.right, b.left = cut, cut
+	} else {
+		cut := e.low + 0.497*(e.high-e.low)
+		a.high, b.low = cut, cut
+	}
+	return [2]rectangle{a, b}
+}
+
+// recoveryStarts lists where paths were lost, and places beside the units' roots.
+func (f *Field) recoveryStarts(paths []path) []complex128 {
 	var starts []complex128
 	for i := range paths {
 		if !paths[i].found {
@@ -158,11 +199,6 @@ func (f *Field) recoveryStarts(paths []path, e rectangle) []complex128 {
 	for _, a := range paths {
 		if a.found && a.mode < 0 {
 			starts = append(starts, a.root*complex(1.002, 0.003), a.root*complex(0.998, -0.003))
-		}
-	}
-	for hz := e.left / (2 * math.Pi); hz < e.right/(2*math.Pi); hz += 3 {
-		for _, d := range []float64{5, 20, 60, 150, 300} {
-			starts = append(starts, complex(2*math.Pi*hz, d))
 		}
 	}
 	return starts
