@@ -130,8 +130,8 @@ func wrap(x float64) float64 { return x - 2*math.Pi*math.Round(x/(2*math.Pi)) }
 // recover looks for the zeros that the count says are missing, by Newton's
 // method on the determinant with the known zeros divided out and the bare
 // modes' poles multiplied in: from where the paths were lost, from beside the
-// units' roots, which crowd, and then from the middle of the cells that counting
-// in ever smaller parts of the contour narrows them down to.
+// units' roots, which crowd, and then from the cells that counting in ever smaller
+// parts of the contour narrows them down to.
 func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted int, distants []distant) ([]path, error) {
 	w := f.newFollower(distants)
 	try := func(s complex128, within rectangle) {
@@ -151,7 +151,12 @@ func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted 
 			return nil
 		}
 		if max(c.right-c.left, c.high-c.low) < narrowest {
-			try(complex((c.left+c.right)/2, (c.low+c.high)/2), e)
+			// Two units alike have two zeros side by side.
+			for _, at := range [][2]float64{{0.5, 0.5}, {0.2, 0.7}, {0.8, 0.3}, {0.3, 0.2}, {0.7, 0.8}} {
+				if inside(paths, c) < n {
+					try(complex(c.left+at[0]*(c.right-c.left), c.low+at[1]*(c.high-c.low)), e)
+				}
+			}
 			return nil
 		}
 		for _, part := range c.halves() {
@@ -171,7 +176,7 @@ func (f *Field) recover(ctx context.Context, paths []path, e rectangle, counted 
 	return paths, ctx.Err()
 }
 
-// narrowest is the size of a cell, rad/s, from whose middle a zero in it is found.
+// narrowest is the size of a cell, rad/s, from which the zeros in it are found.
 const narrowest = 4.0
 
 // halves cuts a contour across its longer side, a little off the middle, where
