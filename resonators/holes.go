@@ -75,7 +75,7 @@ const flangedEnd = 0.85
 //
 //	δ = (8a/3π)·(1 − 1.47·√ε + 0.47·√ε³)
 //
-// Source: Rschevkin, A Course of Lectures on the Theory of Sound, 1963.
+// Source: Rschevkin, The Theory of Sound, 1963.
 func holeEnd(radius, eps float64) float64 {
 	x := math.Sqrt(eps)
 	return 8 * radius / (3 * math.Pi) * (1 - 1.47*x + 0.47*x*x*x)
