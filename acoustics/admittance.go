@@ -104,7 +104,8 @@ func AdmittanceFromDiffuse(alpha float64) float64 {
 		}
 		step := (alpha - value) / slope
 		beta = min(beta+step, greatestAtBeta)
-		if math.Abs(step) <= 1e-14*beta {
+		// Where α is steep a step squares the error.
+		if off := math.Abs(step); off <= 1e-14*beta || off <= 1e-8*beta && slope > 1 {
 			break
 		}
 	}

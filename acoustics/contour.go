@@ -68,13 +68,13 @@ func (f *Field) count(ctx context.Context, e rectangle, distants []distant) (int
 		return n, nil
 	}
 	corners := []complex128{complex(e.left, e.low), complex(e.right, e.low), complex(e.right, e.high), complex(e.left, e.high)}
-	// Each edge is cut into pieces of about this length, rad/s, then refined: the
-	// right edge runs between zeros, the lower one close under them.
-	const piece = 4.0
+	// Each edge is cut into pieces of about these lengths, rad/s, then refined: the
+	// lower edge runs close under the zeros, the right one between them.
+	lengths := [4]float64{6, 4, 12, 12}
 	var ends [][2]complex128
 	for i, a := range corners {
 		b := corners[(i+1)%4]
-		pieces := int(math.Ceil(cmplx.Abs(b-a) / piece))
+		pieces := int(math.Ceil(cmplx.Abs(b-a) / lengths[i]))
 		for j := range pieces {
 			ends = append(ends, [2]complex128{
 				a + (b-a)*complex(float64(j)/float64(pieces), 0),
