@@ -3,6 +3,7 @@ package figures
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/draw"
@@ -137,7 +138,7 @@ func (p lanePen) level() {
 	lo, hi := math.Inf(1), math.Inf(-1)
 	for i, hz := range l.Hz {
 		if p.sees(hz) {
-			for _, v := range []float64{l.Bare[p.v.Seat][i], l.Treated[p.v.Seat][i]} {
+			for _, v := range []float64{l.Bare[p.v.Seat][i], l.Treated[p.v.Seat][i], l.Lowest[i], l.Highest[i]} {
 				lo, hi = math.Min(lo, v), math.Max(hi, v)
 			}
 		}
@@ -156,6 +157,7 @@ func (p lanePen) level() {
 		marks = append(marks, v)
 	}
 	p.marks(a, marks, "%.0f")
+	p.spread(a)
 	if len(p.r.Absorbers) > 0 {
 		p.curve(p.levelPoints(a, l.Bare[p.v.Seat]), 1.2*px, p.s.Slate, 4*px, 2.5*px)
 		p.curve(p.levelPoints(a, l.Treated[p.v.Seat]), 1.9*px, p.s.Ochre)
@@ -163,6 +165,21 @@ func (p lanePen) level() {
 		p.curve(p.levelPoints(a, l.Bare[p.v.Seat]), 1.7*px, p.s.Slate)
 	}
 	p.legend([]entry{{"bare", p.s.Slate, len(p.r.Absorbers) > 0}, {"treated", p.s.Ochre, false}}, len(p.r.Absorbers) > 0)
+}
+
+// spread lays the range of the treated levels over all seats under the curves.
+func (p lanePen) spread(a scale) {
+	l := p.r.Levels
+	if len(l.Treated) < 2 {
+		return
+	}
+	outline := p.levelPoints(a, l.Lowest)
+	for _, q := range slices.Backward(p.levelPoints(a, l.Highest)) {
+		outline = append(outline, q)
+	}
+	if len(outline) > 2 {
+		p.polygon(mix(p.s.Paper, p.s.Ochre, 0.16), outline...)
+	}
 }
 
 func (p lanePen) levelPoints(a scale, level []float64) []vg.Point {

@@ -3,6 +3,7 @@ package figures
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"gonum.org/v1/plot/vg"
 
@@ -132,6 +133,9 @@ func LaneReading(lane Lane, r *study.Result, v View, hz float64) string {
 			s := fmt.Sprintf("%s  bare %s", units.Hertz(hz), units.Decibels(r.Levels.Bare[v.Seat][i]))
 			if len(r.Absorbers) > 0 {
 				s += "  treated " + units.Decibels(r.Levels.Treated[v.Seat][i])
+			}
+			if len(r.Levels.Treated) > 1 {
+				s += fmt.Sprintf("  seats %s to %s", strings.TrimSuffix(units.Decibels(r.Levels.Lowest[i]), " dB"), units.Decibels(r.Levels.Highest[i]))
 			}
 			return s
 		}

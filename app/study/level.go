@@ -2,6 +2,7 @@ package study
 
 import (
 	"context"
+	"math"
 
 	"stillroom/app/project"
 )
@@ -23,7 +24,22 @@ func Level(p project.Project, o Options) (Levels, error) {
 	if err != nil {
 		return Levels{}, err
 	}
-	return Levels{Hz: field.hz, Bare: field.levels.Bare, Treated: field.levels.Treated}, nil
+	return levelsOf(field), nil
+}
+
+// levelsOf gathers a field's levels and their spread over the seats.
+func levelsOf(f *fieldPart) Levels {
+	l := Levels{Hz: f.hz, Bare: f.levels.Bare, Treated: f.levels.Treated}
+	for i := range f.hz {
+		lowest, highest, energy := math.Inf(1), math.Inf(-1), 0.0
+		for _, seat := range l.Treated {
+			lowest, highest = math.Min(lowest, seat[i]), math.Max(highest, seat[i])
+			energy += math.Pow(10, seat[i]/10)
+		}
+		l.Lowest, l.Highest = append(l.Lowest, lowest), append(l.Highest, highest)
+		l.Mean = append(l.Mean, 10*math.Log10(energy/float64(len(l.Treated))))
+	}
+	return l
 }
 
 // Absorbers computes only the absorbers of a project on their own.

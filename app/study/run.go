@@ -102,7 +102,7 @@ func newResult(p project.Project, o Options, shell *shellPart, kit *kitPart, fie
 
 		Reverberation: shell.reverb,
 		Bands:         shell.bands,
-		Levels:        Levels{Hz: field.hz, Bare: field.levels.Bare, Treated: field.levels.Treated},
+		Levels:        levelsOf(field),
 		Absorbers:     append([]AbsorberRow(nil), kit.rows...),
 	}
 	r.Modes = make([]ModeRow, len(shell.modes))

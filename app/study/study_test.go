@@ -209,3 +209,19 @@ func BenchmarkComplete(b *testing.B) {
 		}
 	}
 }
+
+// The spread over the seats is between them, the mean that of the energies.
+func TestLevelsSpreadOverSeats(t *testing.T) {
+	p := sample(t, "listening-room")
+	l, err := study.Level(p, study.Options{Points: 30})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for i := range l.Hz {
+		a, b := l.Treated[0][i], l.Treated[1][i]
+		mean := 10 * math.Log10((math.Pow(10, a/10)+math.Pow(10, b/10))/2)
+		if l.Lowest[i] != math.Min(a, b) || l.Highest[i] != math.Max(a, b) || math.Abs(l.Mean[i]-mean) > 1e-9 {
+			t.Errorf("%g Hz: %v, %v, %v of %v and %v dB", l.Hz[i], l.Lowest[i], l.Mean[i], l.Highest[i], a, b)
+		}
+	}
+}

@@ -13,6 +13,7 @@ import (
 	"stillroom/app/project"
 	"stillroom/app/sheets"
 	"stillroom/app/units"
+	"stillroom/assets"
 )
 
 // tidy takes the dust of binary arithmetic off a figure.
@@ -154,7 +155,11 @@ func (d *details) surfaceForm(s acoustics.Surface) {
 		var t []string
 		for _, share := range d.state.Project.Lining(s) {
 			f, _ := d.state.Project.FinishByID(share.Finish)
-			t = append(t, f.Name+": "+f.Source+".")
+			text := f.Name + ": " + f.Source + "."
+			if built, ok := assets.FinishByID(share.Finish); ok && built.Caution != "" {
+				text += " " + built.Caution
+			}
+			t = append(t, text)
 		}
 		return strings.Join(t, "\n") + "\nPublished coefficients below 125 Hz are scarce and uncertain; the lowest band's value is held."
 	})
