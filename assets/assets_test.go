@@ -86,3 +86,29 @@ func TestCautions(t *testing.T) {
 		}
 	}
 }
+
+// Whatever is read as a list of finishes, nothing panics, and what is read
+// without error keeps the list's rules.
+func FuzzReadFinishes(f *testing.F) {
+	f.Add(finishesJSON)
+	f.Add([]byte(`[{"id":"a","name":"A","group":"g","source":"s","absorption":{"125":0.1,"31.5":0}}]`))
+	f.Add([]byte(`[{"id":"a","absorption":{"1e999":null}}]`))
+	f.Fuzz(func(t *testing.T, data []byte) {
+		list, err := readFinishes(data)
+		if err != nil {
+			return
+		}
+		seen := map[string]bool{}
+		for _, x := range list {
+			if x.ID == "" || seen[x.ID] || x.Source == "" {
+				t.Fatalf("%+v is let through", x)
+			}
+			seen[x.ID] = true
+			for _, hz := range []float64{0, 20, 100, 1e4} {
+				if a := x.Coefficient(hz); !(a >= 0 && a <= 1) {
+					t.Fatalf("%s absorbs %v at %g Hz", x.ID, a, hz)
+				}
+			}
+		}
+	})
+}

@@ -1,6 +1,7 @@
 package assets
 
 import (
+	"cmp"
 	_ "embed"
 	"encoding/json"
 	"fmt"
@@ -77,7 +78,7 @@ func readFinishes(data []byte) ([]Finish, error) {
 			}
 			f.Absorption = append(f.Absorption, acoustics.BandAbsorption{Hz: hz, Alpha: alpha})
 		}
-		slices.SortFunc(f.Absorption, func(a, b acoustics.BandAbsorption) int { return int(a.Hz - b.Hz) })
+		slices.SortFunc(f.Absorption, func(a, b acoustics.BandAbsorption) int { return cmp.Compare(a.Hz, b.Hz) })
 		list = append(list, f)
 	}
 	return list, nil
