@@ -47,6 +47,7 @@ type controller struct {
 	working   *canvas.Text
 
 	outer, inner, lower *container.Split
+	tabs                *container.AppTabs
 	started             time.Time
 	frames              int
 	edited              time.Time     // when the project was last submitted
@@ -92,9 +93,9 @@ func (c *controller) compose() {
 	c.status, c.working = canvas.NewText("", nil), canvas.NewText("", nil)
 	c.status.TextSize, c.working.TextSize = 10.5, 10.5
 	foot := container.NewBorder(nil, nil, c.status, c.working)
-	tabs := container.NewAppTabs(container.NewTabItem("Modes", c.modes), container.NewTabItem("Absorbers", c.absorbers), container.NewTabItem("Criteria", c.criteria))
+	c.tabs = container.NewAppTabs(container.NewTabItem("Modes", c.modes), container.NewTabItem("Absorbers", c.absorbers), container.NewTabItem("Criteria", c.criteria))
 	c.inner = container.NewHSplit(c.drawing, c.lanes)
-	c.lower = container.NewVSplit(c.inner, tabs)
+	c.lower = container.NewVSplit(c.inner, c.tabs)
 	c.outer = container.NewHSplit(c.lower, c.details.root)
 	c.inner.Offset, c.lower.Offset, c.outer.Offset = c.settings.Inner, c.settings.Lower, c.settings.Outer
 	if !c.settings.Details {
@@ -193,9 +194,7 @@ func (c *controller) result(r *study.Result, err error) {
 		c.drawing.show(c.state)
 		c.lanes.show(c.state)
 		c.showFinding()
-		if c.frames%4 == 0 {
-			c.schedules()
-		}
+		c.schedules()
 	} else {
 		c.refresh()
 	}

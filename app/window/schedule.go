@@ -66,6 +66,14 @@ func (s *schedule) show(rows []scheduleRow, chosen int, dark bool) {
 	if moved {
 		s.reveal()
 	}
+	if s.Visible() {
+		s.Refresh()
+	}
+}
+
+// Show shows the rows put in place while another schedule lay on top.
+func (s *schedule) Show() {
+	s.BaseWidget.Show()
 	s.Refresh()
 }
 

@@ -743,3 +743,21 @@ func TestAbsorberFiguresAreShown(t *testing.T) {
 	}
 	t.Error("the figures are not shown")
 }
+
+// A schedule that lay under another shows what came meanwhile.
+func TestHiddenScheduleCatchesUp(t *testing.T) {
+	h := open(t)
+	h.tabs.SelectIndex(1)
+	h.details.addAbsorber()
+	h.typed2(0, "6.2 m")
+	h.settle()
+	h.tabs.SelectIndex(0)
+	want := h.modes.rows[0].cells[3]
+	found := false
+	for _, row := range h.modes.r.cells {
+		found = found || row[3].Text == want
+	}
+	if !found {
+		t.Errorf("the schedule does not show %s Hz, the first mode of the longer room", want)
+	}
+}
