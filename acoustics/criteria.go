@@ -19,6 +19,9 @@ func verdict(met bool) Verdict {
 	return NotMet
 }
 
+// String returns "yes" and "no" for met and not met, and "" for information.
+func (v Verdict) String() string { return [3]string{"", "yes", "no"}[v] }
+
 // Criterion is one published figure of merit of a room.
 type Criterion struct {
 	ID, Title, Source string
@@ -29,18 +32,27 @@ type Criterion struct {
 	Advice            string // what to do where it is not met, one sentence
 }
 
-// Sources of the criteria. Those of the two recommendations are from memory.
+// Sources of the criteria, their limits from memory.
 const (
-	bonello1981  = "Bonello, J. Audio Eng. Soc. 29 (1981) 597"
-	proportions  = "EBU Tech 3276; ITU-R BS.1116-3"
-	bs1116       = "ITU-R BS.1116-3"
-	ebu3276      = "EBU Tech 3276"
-	schroeder62  = "Schroeder & Kuttruff, J. Acoust. Soc. Am. 34 (1962) 76"
+	memory       = " (from memory)"
+	bonello1981  = "Bonello, J. Audio Eng. Soc. 29 (1981) 597" + memory
+	proportions  = "EBU Tech 3276; ITU-R BS.1116-3" + memory
+	bs1116       = "ITU-R BS.1116-3" + memory
+	ebu3276      = "EBU Tech 3276" + memory
+	schroeder62  = "Schroeder & Kuttruff, J. Acoust. Soc. Am. 34 (1962) 76" + memory
 	coincidence  = 1e-6 // relative distance of frequencies that count as one
 	bonelloFew   = 5    // modes in a band from which on coincidence is allowed
 	integerNear  = 0.05 // how near a whole ratio is too near
 	reverbWithin = 0.05 // s
 )
+
+// WhatToDo returns the advice where it is wanted: where the criterion is not met.
+func (c Criterion) WhatToDo() string {
+	if c.Verdict != NotMet {
+		return ""
+	}
+	return c.Advice
+}
 
 // Criteria returns the criteria that shape, surfaces and air decide, in a fixed
 // order. L is the larger floor dimension, W the smaller.
@@ -169,9 +181,9 @@ func (r Room) statistics() []Criterion {
 		{ID: "reverberation", Title: "Reverberation time, within 0.05 s of that for the volume", Source: proportions,
 			Figure: t, Limit: wanted, Unit: "s", Verdict: verdict(math.Abs(t-wanted) <= reverbWithin),
 			Advice: reverbAdvice(t, wanted)},
-		{ID: "floor-area", Title: "Floor area for two-channel listening, at least", Source: bs1116 + " (from memory)",
+		{ID: "floor-area", Title: "Floor area for two-channel listening, at least", Source: bs1116,
 			Figure: floor, Limit: 20, Unit: "m²", Verdict: verdict(floor >= 20), Advice: "Treat the modes of a small room one by one."},
-		{ID: "volume", Title: "Volume of a reference room, below", Source: ebu3276 + " (from memory)",
+		{ID: "volume", Title: "Volume of a reference room, below", Source: ebu3276,
 			Figure: v, Limit: 300, Unit: "m³", Verdict: verdict(v < 300), Advice: "A hall has other criteria."},
 	}
 }
@@ -194,23 +206,22 @@ func (b Box) StereoCriteria(left, right, seat Point) []Criterion {
 		further  = math.Max(distance(left, seat), distance(right, seat))
 		angle    = angleAt(seat, left, right) * 180 / math.Pi
 		clear    = math.Min(b.clearance(left), b.clearance(right))
-		source   = bs1116 + " (from memory)"
 		distance = (nearer + further) / 2
 	)
 	return []Criterion{
-		{ID: "stereo-base-low", Title: "Base of the loudspeaker pair, at least", Source: source, Figure: base, Limit: 2, Unit: "m",
+		{ID: "stereo-base-low", Title: "Base of the loudspeaker pair, at least", Source: bs1116, Figure: base, Limit: 2, Unit: "m",
 			Verdict: verdict(base >= 2), Advice: "Move the loudspeakers apart."},
-		{ID: "stereo-base-high", Title: "Base of the loudspeaker pair, at most", Source: source, Figure: base, Limit: 3, Unit: "m",
+		{ID: "stereo-base-high", Title: "Base of the loudspeaker pair, at most", Source: bs1116, Figure: base, Limit: 3, Unit: "m",
 			Verdict: verdict(base <= 3), Advice: "Move the loudspeakers together."},
-		{ID: "stereo-angle", Title: "Angle of the pair at the seat, within 5° of", Source: source, Figure: angle, Limit: 60, Unit: "°",
+		{ID: "stereo-angle", Title: "Angle of the pair at the seat, within 5° of", Source: bs1116, Figure: angle, Limit: 60, Unit: "°",
 			Verdict: verdict(math.Abs(angle-60) <= 5), Advice: "Make seat and pair a triangle of equal sides."},
-		{ID: "listening-distance-low", Title: "Listening distance, at least", Source: source, Figure: distance, Limit: 2, Unit: "m",
+		{ID: "listening-distance-low", Title: "Listening distance, at least", Source: bs1116, Figure: distance, Limit: 2, Unit: "m",
 			Verdict: verdict(distance >= 2), Advice: "Move the seat further from the pair."},
-		{ID: "listening-distance-high", Title: "Listening distance, at most 1.7 times the base", Source: source, Figure: distance, Limit: 1.7 * base, Unit: "m",
+		{ID: "listening-distance-high", Title: "Listening distance, at most 1.7 times the base", Source: bs1116, Figure: distance, Limit: 1.7 * base, Unit: "m",
 			Verdict: verdict(distance <= 1.7*base), Advice: "Move the seat nearer to the pair."},
 		{ID: "stereo-symmetry", Title: "Difference of the two loudspeakers' distances from the seat", Source: "common practice",
 			Figure: further - nearer, Limit: 0.05, Unit: "m", Verdict: verdict(further-nearer <= 0.05), Advice: "Move the seat onto the pair's mid-plane."},
-		{ID: "loudspeaker-walls", Title: "Distance of a loudspeaker from the nearest wall, at least", Source: source, Figure: clear, Limit: 1, Unit: "m",
+		{ID: "loudspeaker-walls", Title: "Distance of a loudspeaker from the nearest wall, at least", Source: bs1116, Figure: clear, Limit: 1, Unit: "m",
 			Verdict: verdict(clear >= 1), Advice: "Move it away from the wall, or allow for it."},
 	}
 }

@@ -102,10 +102,10 @@ func (p pen) disc(x, y, r vg.Length, col color.Color) {
 
 // ring strokes a circle, as a polygon of so many sides that no eye counts them.
 func (p pen) ring(x, y, r, width vg.Length, col color.Color) {
-	const sides = 14
+	sides := 8 + int(2*r/px)
 	var path vg.Path
 	for i := range sides {
-		sin, cos := math.Sincos(2 * math.Pi * float64(i) / sides)
+		sin, cos := math.Sincos(2 * math.Pi * float64(i) / float64(sides))
 		q := p.at(x+r*vg.Length(cos), y+r*vg.Length(sin))
 		if i == 0 {
 			path.Move(q)

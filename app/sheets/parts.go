@@ -181,11 +181,7 @@ func (s *writer) criteria() {
 	s.heading("Criteria of the room without absorbers")
 	var rows [][]string
 	for _, c := range s.r.Criteria {
-		met, advice := map[acoustics.Verdict]string{acoustics.Met: "yes", acoustics.NotMet: "no"}[c.Verdict], ""
-		if c.Verdict == acoustics.NotMet {
-			advice = c.Advice
-		}
-		rows = append(rows, []string{met, c.Title, Measured(c.Figure, c.Unit, s.sys), Measured(c.Limit, c.Unit, s.sys), advice, c.Source})
+		rows = append(rows, []string{c.Verdict.String(), c.Title, Measured(c.Figure, c.Unit, s.sys), Measured(c.Limit, c.Unit, s.sys), c.WhatToDo(), c.Source})
 	}
 	s.table([]column{{"Met", 0, false}, {"Criterion", 32, false}, {"Figure", 0, true}, {"Limit", 0, true}, {"What to do", 26, false}, {"Source", 26, false}}, rows)
 	s.paragraph("A figure without a limit is for information. Criteria guide a design; a room that meets them all still wants listening and measuring.", textSize)

@@ -92,27 +92,26 @@ func partition(p bool) string {
 // Step says what a step of a dimension is in the units of a system, and how many
 // of the sensitivity's own steps it is.
 func Step(d resonators.Sensitivity, s units.System) (words string, steps float64) {
-	const inch, cubicFoot, poundPerSquareFoot = 0.0254, 0.028316846592, 4.88242764
 	text, size := "", d.Step
 	switch d.Quantity() {
 	case resonators.Length:
 		text = units.Small(d.Step, s)
 		if s == units.US {
 			// The nearest common division of the inch.
-			text, size = "1/16 in", inch/16
+			text, size = "1/16 in", units.Inch/16
 			if d.Step < 0.0005 {
-				text, size = "1/64 in", inch/64
+				text, size = "1/64 in", units.Inch/64
 			}
 		}
 	case resonators.Volume:
 		text = units.Litres(d.Step, s)
 		if s == units.US {
-			text, size = "0.1 ft³", 0.1*cubicFoot
+			text, size = "0.1 ft³", 0.1*units.CubicFoot
 		}
 	case resonators.AreaMass:
 		text = units.Mass(d.Step, s)
 		if s == units.US {
-			text, size = "0.02 lb/ft²", 0.02*poundPerSquareFoot
+			text, size = "0.02 lb/ft²", 0.02*units.PoundPerSquareFoot
 		}
 	}
 	return d.Words(text), size / d.Step

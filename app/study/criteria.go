@@ -33,24 +33,13 @@ func (r *Result) judge(room []acoustics.Criterion) {
 	}
 }
 
-// Criteria computes only the criteria of a project.
+// Criteria computes only the criteria of a project: those of the bare room.
 func Criteria(p project.Project) ([]acoustics.Criterion, error) {
-	p.Absorbers = nil // the criteria are those of the bare room
-	o := Options{Points: 2}.withDefaults()
-	if err := tooLarge(p, max(o.ToHz, o.ModesToHz), mostModes); err != nil {
-		return nil, err
-	}
-	shell, err := shellStage(p, o, nil)
+	p.Absorbers = nil
+	r, err := Run(context.Background(), p, Options{Points: 2}, nil, nil)
 	if err != nil {
 		return nil, err
 	}
-	field, err := fieldStage(context.Background(), p, o, shell, new(kitPart), nil)
-	if err != nil {
-		return nil, err
-	}
-	r := newResult(p, o, shell, new(kitPart), field)
-	r.rate(shell.limit)
-	r.judge(shell.criteria)
 	return r.Criteria, nil
 }
 

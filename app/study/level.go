@@ -31,13 +31,11 @@ func Level(p project.Project, o Options) (Levels, error) {
 func levelsOf(f *fieldPart) Levels {
 	l := Levels{Hz: f.hz, Bare: f.levels.Bare, Treated: f.levels.Treated}
 	for i := range f.hz {
-		lowest, highest, energy := math.Inf(1), math.Inf(-1), 0.0
+		lowest, highest := math.Inf(1), math.Inf(-1)
 		for _, seat := range l.Treated {
 			lowest, highest = math.Min(lowest, seat[i]), math.Max(highest, seat[i])
-			energy += math.Pow(10, seat[i]/10)
 		}
 		l.Lowest, l.Highest = append(l.Lowest, lowest), append(l.Highest, highest)
-		l.Mean = append(l.Mean, 10*math.Log10(energy/float64(len(l.Treated))))
 	}
 	return l
 }

@@ -120,9 +120,8 @@ type ReverberationRow struct {
 type Levels struct {
 	Hz            []float64
 	Bare, Treated [][]float64 // Treated equals Bare where there is no absorber; nil before StageLevel
-	// Lowest, Mean and Highest are the treated levels over all seats, indexed
-	// [frequency]; the mean is of the energies.
-	Lowest, Mean, Highest []float64
+	// Lowest and Highest are the treated levels over all seats, indexed [frequency].
+	Lowest, Highest []float64
 }
 
 // AbsorberRow is one absorber of the project.

@@ -23,10 +23,10 @@ const (
 	// Inch and Foot in metres, exact (international yard and pound agreement, 1959).
 	Inch = 0.0254
 	Foot = 12 * Inch
-	// pound per square foot in kg/m².
-	poundPerFoot2 = 0.45359237 / (Foot * Foot)
-	// cubicFoot in m³.
-	cubicFoot = Foot * Foot * Foot
+	// PoundPerSquareFoot in kg/m².
+	PoundPerSquareFoot = 0.45359237 / (Foot * Foot)
+	// CubicFoot in m³.
+	CubicFoot = Foot * Foot * Foot
 )
 
 // Length writes a length in metres: "5.20 m", or feet, inches and sixteenths.
@@ -56,7 +56,7 @@ func Area(m2 float64, s System) string {
 // Volume writes a volume in m³.
 func Volume(m3 float64, s System) string {
 	if s == US {
-		return decimal(m3/cubicFoot, 0) + " ft³"
+		return decimal(m3/CubicFoot, 0) + " ft³"
 	}
 	return decimal(m3, 1) + " m³"
 }
@@ -64,7 +64,7 @@ func Volume(m3 float64, s System) string {
 // Litres writes a volume in m³ of a box.
 func Litres(m3 float64, s System) string {
 	if s == US {
-		return decimal(m3/cubicFoot, 2) + " ft³"
+		return decimal(m3/CubicFoot, 2) + " ft³"
 	}
 	return decimal(m3*1000, 1) + " L"
 }
@@ -72,7 +72,7 @@ func Litres(m3 float64, s System) string {
 // Mass writes a mass per area in kg/m².
 func Mass(kg float64, s System) string {
 	if s == US {
-		return decimal(kg/poundPerFoot2, 2) + " lb/ft²"
+		return decimal(kg/PoundPerSquareFoot, 2) + " lb/ft²"
 	}
 	return trimmed(kg, 2) + " kg/m²"
 }
@@ -80,7 +80,7 @@ func Mass(kg float64, s System) string {
 // Speed returns a speed of sound as text: metres or feet a second.
 func Speed(ms float64, s System) string {
 	if s == US {
-		return decimal(ms/0.3048, 1) + " ft/s"
+		return decimal(ms/Foot, 1) + " ft/s"
 	}
 	return decimal(ms, 1) + " m/s"
 }

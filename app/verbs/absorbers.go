@@ -58,15 +58,7 @@ func absorberOf(a study.AbsorberRow) absorberJSON {
 }
 
 func runAbsorbers(c *call) error {
-	as := c.flags.String("as", "text", "")
-	file, err := c.parseFile()
-	if err != nil {
-		return err
-	}
-	if err := oneOf("as", *as, "text", "csv", "json"); err != nil {
-		return err
-	}
-	p, err := c.load(file)
+	p, as, err := c.loadAs()
 	if err != nil {
 		return err
 	}
@@ -74,17 +66,11 @@ func runAbsorbers(c *call) error {
 	if err != nil {
 		return err
 	}
-	switch *as {
-	case "json":
-		out := absorbersJSON{[]absorberJSON{}}
-		for _, a := range rows {
-			out.Absorbers = append(out.Absorbers, absorberOf(a))
-		}
-		return writeJSON(c.stdout, out)
-	case "csv":
-		return writeCSV(c.stdout, absorbersCSV(rows))
+	out := absorbersJSON{[]absorberJSON{}}
+	for _, a := range rows {
+		out.Absorbers = append(out.Absorbers, absorberOf(a))
 	}
-	return absorbersText(c, rows)
+	return c.answer(as, out, absorbersCSV(rows), func() error { return absorbersText(c, rows) })
 }
 
 // absorbersCSV gives a row for each absorber with its diffuse coefficients.

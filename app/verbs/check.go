@@ -1,6 +1,7 @@
 package verbs
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"strings"
@@ -33,15 +34,7 @@ func criterionOf(c acoustics.Criterion) criterionJSON {
 }
 
 func runCheck(c *call) error {
-	as := c.flags.String("as", "text", "")
-	file, err := c.parseFile()
-	if err != nil {
-		return err
-	}
-	if err := oneOf("as", *as, "text", "csv", "json"); err != nil {
-		return err
-	}
-	p, err := c.load(file)
+	p, as, err := c.loadAs()
 	if err != nil {
 		return err
 	}
@@ -49,32 +42,13 @@ func runCheck(c *call) error {
 	if err != nil {
 		return err
 	}
-	switch *as {
-	case "json":
-		out := checkJSON{[]criterionJSON{}}
-		for _, x := range list {
-			out.Criteria = append(out.Criteria, criterionOf(x))
-		}
-		return writeJSON(c.stdout, out)
-	case "csv":
-		rows := [][]string{{"id", "title", "source", "figure", "limit", "unit", "met"}}
-		for _, x := range list {
-			rows = append(rows, []string{x.ID, x.Title, x.Source, cell(x.Figure), cell(x.Limit), x.Unit, metWord(x.Verdict, "")})
-		}
-		return writeCSV(c.stdout, rows)
+	out := checkJSON{[]criterionJSON{}}
+	rows := [][]string{{"id", "title", "source", "figure", "limit", "unit", "met"}}
+	for _, x := range list {
+		out.Criteria = append(out.Criteria, criterionOf(x))
+		rows = append(rows, []string{x.ID, x.Title, x.Source, cell(x.Figure), cell(x.Limit), x.Unit, x.Verdict.String()})
 	}
-	return checkText(c, list)
-}
-
-// metWord says a verdict in a word.
-func metWord(v acoustics.Verdict, information string) string {
-	switch v {
-	case acoustics.Met:
-		return "yes"
-	case acoustics.NotMet:
-		return "no"
-	}
-	return information
+	return c.answer(as, out, rows, func() error { return checkText(c, list) })
 }
 
 // checkText writes the criteria for a terminal, and what to do about those that
@@ -83,9 +57,9 @@ func checkText(c *call, list []acoustics.Criterion) error {
 	rows := [][]string{{"met", "criterion", "figure", "limit", "source"}}
 	var advice []string
 	for _, x := range list {
-		rows = append(rows, []string{metWord(x.Verdict, "–"), x.Title, measured(x.Figure, x.Unit), measured(x.Limit, x.Unit), x.Source})
-		if x.Verdict == acoustics.NotMet {
-			advice = append(advice, fmt.Sprintf("%s: %s", x.ID, x.Advice))
+		rows = append(rows, []string{cmp.Or(x.Verdict.String(), "–"), x.Title, measured(x.Figure, x.Unit), measured(x.Limit, x.Unit), x.Source})
+		if todo := x.WhatToDo(); todo != "" {
+			advice = append(advice, x.ID+": "+todo)
 		}
 	}
 	fmt.Fprintln(c.stdout, "Calculated of the room without absorbers. A figure without a limit is for information.")

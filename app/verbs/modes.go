@@ -105,13 +105,7 @@ func runModes(c *call) error {
 	if err != nil {
 		return err
 	}
-	switch *as {
-	case "json":
-		return writeJSON(c.stdout, modesOf(r, seat))
-	case "csv":
-		return writeCSV(c.stdout, modesCSV(r, seat))
-	}
-	return modesText(c, r, seat)
+	return c.answer(*as, modesOf(r, seat), modesCSV(r, seat), func() error { return modesText(c, r, seat) })
 }
 
 // modesOf returns the promised JSON of the mode schedule.

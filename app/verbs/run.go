@@ -148,6 +148,32 @@ func (c *call) parseFile() (string, error) {
 	return rest[0], nil
 }
 
+// answer writes a verb's answer in the form asked for.
+func (c *call) answer(as string, inJSON any, inCSV [][]string, inText func() error) error {
+	switch as {
+	case "json":
+		return writeJSON(c.stdout, inJSON)
+	case "csv":
+		return writeCSV(c.stdout, inCSV)
+	}
+	return inText()
+}
+
+// loadAs reads the options, checks the form asked for and reads the project
+// FILE: the whole beginning of a verb that has no other options.
+func (c *call) loadAs() (p project.Project, as string, err error) {
+	form := c.flags.String("as", "text", "")
+	file, err := c.parseFile()
+	if err != nil {
+		return p, "", err
+	}
+	if err := oneOf("as", *form, "text", "csv", "json"); err != nil {
+		return p, "", err
+	}
+	p, err = c.load(file)
+	return p, *form, err
+}
+
 // load reads the project FILE.
 func (c *call) load(file string) (project.Project, error) {
 	if file == "-" {

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"io"
+	"strings"
 	"time"
 
 	"fyne.io/fyne/v2"
@@ -11,7 +12,6 @@ import (
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 
-	"stillroom/acoustics"
 	"stillroom/app/project"
 	"stillroom/app/study"
 )
@@ -267,11 +267,7 @@ func (c *controller) selectCriterion(i int) {
 	c.schedules()
 	if r := c.state.Result; r != nil && i < len(r.Criteria) {
 		x := r.Criteria[i]
-		text := x.Title
-		if x.Verdict == acoustics.NotMet {
-			text += ". " + x.Advice
-		}
-		c.say(text + " (" + x.Source + ")")
+		c.say(strings.TrimSpace(x.Title+". "+x.WhatToDo()) + " Source: " + x.Source)
 	}
 }
 

@@ -111,7 +111,8 @@ func (l *lanes) read() {
 	for _, one := range l.list {
 		one.reading.Text = ""
 		if l.state.Result != nil && hz > 0 {
-			one.reading.Text = figures.LaneReading(one.name, l.state.Result, l.state.view(), hz)
+			room := l.Size().Width - one.title.MinSize().Width - 30
+			one.reading.Text = fitted(figures.LaneReading(one.name, l.state.Result, l.state.view(), hz), room, one.reading.TextSize, one.reading.TextStyle)
 		}
 		one.reading.Refresh()
 	}

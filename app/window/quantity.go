@@ -51,7 +51,7 @@ func (q quantity) write(v float64, s units.System) string {
 	case q.kind == millimetres:
 		return shortest(v) + " mm"
 	case q.kind == areaMass && s == units.US:
-		return shortest(math.Round(v/kgM2PerLbFt2*1e4)/1e4) + " lb/ft²"
+		return shortest(math.Round(v/units.PoundPerSquareFoot*1e4)/1e4) + " lb/ft²"
 	case q.share:
 		return shortest(math.Round(v*1e6)/1e4) + " %"
 	case q.unit == "":
@@ -83,16 +83,13 @@ func (q quantity) read(text string, s units.System) (float64, error) {
 	return v, err
 }
 
-// kgM2PerLbFt2 is 1 lb/ft² in kg/m².
-const kgM2PerLbFt2 = 0.45359237 / (0.3048 * 0.3048)
-
 // readAreaMass reads a mass per area in either unit, a bare number in the
 // system's own.
 func readAreaMass(text string, s units.System) (float64, error) {
 	lower := strings.ToLower(text)
 	if strings.Contains(lower, "lb") || s == units.US && !strings.Contains(lower, "kg") {
 		v, err := units.ParseNumber(text, "lb/ft²")
-		return math.Round(v*kgM2PerLbFt2*1e6) / 1e6, err
+		return math.Round(v*units.PoundPerSquareFoot*1e6) / 1e6, err
 	}
 	return units.ParseNumber(text, "kg/m²")
 }

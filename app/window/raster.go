@@ -3,6 +3,7 @@ package window
 import (
 	"image"
 	"image/color"
+	"slices"
 	"sync"
 
 	"fyne.io/fyne/v2"
@@ -27,12 +28,9 @@ type easel struct {
 // want asks for a picture to be drawn. Those asked for in one turn of the UI
 // goroutine share a round.
 func (e *easel) want(p *picture) {
-	for _, q := range e.wanted {
-		if q == p {
-			return
-		}
+	if !slices.Contains(e.wanted, p) {
+		e.wanted = append(e.wanted, p)
 	}
-	e.wanted = append(e.wanted, p)
 	if !e.busy {
 		e.busy = true
 		e.do(e.round)

@@ -109,12 +109,8 @@ func criteriaRows(s State) []scheduleRow {
 	}
 	var rows []scheduleRow
 	for i, c := range s.Result.Criteria {
-		met, advice := map[acoustics.Verdict]string{acoustics.Met: "yes", acoustics.NotMet: "no"}[c.Verdict], ""
-		if c.Verdict == acoustics.NotMet {
-			advice = c.Advice
-		}
 		rows = append(rows, scheduleRow{item: i, strong: c.Verdict == acoustics.NotMet,
-			cells: []string{met, c.Title, sheets.Measured(c.Figure, c.Unit, s.system()), sheets.Measured(c.Limit, c.Unit, s.system()), advice, c.Source},
+			cells: []string{c.Verdict.String(), c.Title, sheets.Measured(c.Figure, c.Unit, s.system()), sheets.Measured(c.Limit, c.Unit, s.system()), c.WhatToDo(), c.Source},
 			keys:  []float64{float64(c.Verdict), float64(i), c.Figure, c.Limit, float64(i), float64(i)}})
 	}
 	return rows

@@ -83,12 +83,13 @@ func TestFastestDecay(t *testing.T) {
 
 // Lowest peak: the pair (ω_n²−ω²)(ω_a²−ω²+2jζ_aω_aω) = μω²ω_a², response of the
 // mode to a source of constant volume acceleration. A search over tuning and
-// damping finds the closed form's peak to 0.15 %.
+// damping finds the closed form's peak to 0.2 %: its own limit is 0.15 % at μ = 0.1 for the best
+// tuning of all, and its tuning is the best to first order.
 func TestLowestPeak(t *testing.T) {
 	for _, mu := range []float64{0.001, 0.005, 0.01, 0.05, 0.1} {
 		peak := func(tuning, zeta float64) float64 {
 			var most float64
-			for w := 0.7; w < 1.3; w += 2e-4 {
+			for w := 0.7; w < 1.3; w += 1e-5 {
 				a := complex(tuning*tuning-w*w, 2*zeta*tuning*w)
 				most = math.Max(most, cmplx.Abs(a/(complex(1-w*w, 0)*a-complex(mu*w*w*tuning*tuning, 0))))
 			}
@@ -96,7 +97,7 @@ func TestLowestPeak(t *testing.T) {
 		}
 		tuning, zeta, want := LowestPeak(mu)
 		got := peak(tuning, zeta)
-		if math.Abs(got/want-1) > 0.006 {
+		if math.Abs(got/want-1) > 0.002 {
 			t.Errorf("μ = %g: the peak is %.4f, the closed form says %.4f", mu, got, want)
 		}
 		// Another tuning, or another damping, is worse, Den Hartog's 1/(1+μ) too.
