@@ -21,6 +21,7 @@ var layers = []struct {
 	{"samples", nil},
 	{"app/project", []string{"acoustics", "assets"}},
 	{"app/units", nil},
+	{"app/internal/testcase", []string{"acoustics", "assets", "samples", "app/project"}}, // for tests alone
 	{"app/study", []string{"acoustics", "resonators", "resonators/tuning", "assets", "app/project"}},
 	{"app/figures", []string{"acoustics", "resonators", "resonators/tuning", "assets", "app/project", "app/study", "app/units"}},
 	{"app/sheets", []string{"acoustics", "resonators", "resonators/tuning", "assets", "app/project", "app/study", "app/units", "app/figures"}},
@@ -39,7 +40,7 @@ func outside(name string) []string {
 		return gonum
 	case "samples", "app/units":
 		return nil
-	case "app/project", "app/study":
+	case "app/project", "app/internal/testcase", "app/study":
 		return slices.Concat(gonum, saving)
 	case "app/figures", "app/sheets", "app/verbs":
 		return slices.Concat(pictures, saving)

@@ -12,22 +12,14 @@ import (
 	"gonum.org/v1/plot/vg/draw"
 
 	"stillroom/app/figures"
+	"stillroom/app/internal/testcase"
 	"stillroom/app/project"
 	"stillroom/app/study"
-	"stillroom/samples"
 )
 
 func studied(t testing.TB, name string) *study.Result {
 	t.Helper()
-	data, err := samples.Read(name)
-	if err != nil {
-		t.Fatal(err)
-	}
-	p, err := project.Parse(data)
-	if err != nil {
-		t.Fatal(err)
-	}
-	r, err := study.Run(context.Background(), p, study.Options{ModesToHz: 250}, nil, nil)
+	r, err := study.Run(context.Background(), testcase.Sample(t, name), study.Options{ModesToHz: 250}, nil, nil)
 	if err != nil {
 		t.Fatal(err)
 	}

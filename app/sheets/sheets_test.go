@@ -10,25 +10,12 @@ import (
 	"strings"
 	"testing"
 
+	"stillroom/app/internal/testcase"
 	"stillroom/app/project"
 	"stillroom/app/sheets"
 	"stillroom/app/study"
 	"stillroom/app/units"
-	"stillroom/samples"
 )
-
-func sample(t testing.TB, name string) project.Project {
-	t.Helper()
-	data, err := samples.Read(name)
-	if err != nil {
-		t.Fatal(err)
-	}
-	p, err := project.Parse(data)
-	if err != nil {
-		t.Fatal(err)
-	}
-	return p
-}
 
 func studied(t testing.TB, p project.Project) *study.Result {
 	t.Helper()
@@ -78,7 +65,7 @@ func pagesOf(t *testing.T, pdf []byte) int {
 // The set says the study's own figures, names every absorber with its dimensions,
 // numbers its pages and carries the cautions.
 func TestSetOfSample(t *testing.T) {
-	p := sample(t, "edit-suite")
+	p := testcase.Sample(t, "edit-suite")
 	r := studied(t, p)
 	pdf := written(t, r, sheets.Options{})
 	text := textOf(t, pdf)
@@ -116,7 +103,7 @@ func TestSetOfSample(t *testing.T) {
 
 // The same result gives the same bytes.
 func TestSetRepeats(t *testing.T) {
-	r := studied(t, sample(t, "edit-suite"))
+	r := studied(t, testcase.Sample(t, "edit-suite"))
 	if !bytes.Equal(written(t, r, sheets.Options{}), written(t, r, sheets.Options{})) {
 		t.Error("written twice it is not the same to the byte")
 	}
@@ -124,7 +111,7 @@ func TestSetRepeats(t *testing.T) {
 
 // US paper and units: no metric length is left in the tables.
 func TestSetInFeetAndInches(t *testing.T) {
-	p := sample(t, "edit-suite")
+	p := testcase.Sample(t, "edit-suite")
 	r := studied(t, p)
 	pdf := written(t, r, sheets.Options{Letter: true, US: true})
 	text := textOf(t, pdf)
@@ -142,7 +129,7 @@ func TestSetInFeetAndInches(t *testing.T) {
 // Forty absorbers, long texts and many modes run on over pages with the headings
 // again, and nothing is lost.
 func TestLongSet(t *testing.T) {
-	p := sample(t, "edit-suite")
+	p := testcase.Sample(t, "edit-suite")
 	p.Title = strings.Repeat("A very long title of a house with many rooms ", 4)
 	p.PreparedFor = strings.Repeat("A client with a long name ", 7)
 	p.Room.Length, p.Room.Width, p.Room.Height = 12, 9, 5
@@ -194,7 +181,7 @@ func TestLongSet(t *testing.T) {
 }
 
 func BenchmarkSet(b *testing.B) {
-	r := studied(b, sample(b, "edit-suite"))
+	r := studied(b, testcase.Sample(b, "edit-suite"))
 	for b.Loop() {
 		written(b, r, sheets.Options{})
 	}

@@ -7,23 +7,11 @@ import (
 	"reflect"
 	"testing"
 
+	"stillroom/app/internal/testcase"
 	"stillroom/app/project"
 	"stillroom/app/study"
 	"stillroom/samples"
 )
-
-func sample(t testing.TB, name string) project.Project {
-	t.Helper()
-	data, err := samples.Read(name)
-	if err != nil {
-		t.Fatal(err)
-	}
-	p, err := project.Parse(data)
-	if err != nil {
-		t.Fatal(err)
-	}
-	return p
-}
 
 func run(t testing.TB, p project.Project, former *study.Result) *study.Result {
 	t.Helper()
@@ -55,7 +43,7 @@ func sameModes(a, b *study.Result) bool {
 
 // A result does not depend on the one it took stages over from.
 func TestFormerResultChangesNothing(t *testing.T) {
-	p := sample(t, "edit-suite")
+	p := testcase.Sample(t, "edit-suite")
 	first := run(t, p, nil)
 	edits := map[string]project.Project{
 		"the same":            p,
@@ -77,7 +65,7 @@ func TestFormerResultChangesNothing(t *testing.T) {
 
 // Progress brings the levels before the poles, and the last word is complete.
 func TestStages(t *testing.T) {
-	p := sample(t, "edit-suite")
+	p := testcase.Sample(t, "edit-suite")
 	var stages []study.Stage
 	r, err := study.Run(context.Background(), p, study.Options{Points: 20, ModesToHz: 80}, nil, func(part *study.Result) {
 		stages = append(stages, part.Stage)
@@ -106,7 +94,7 @@ func TestStages(t *testing.T) {
 
 func TestRunStopsWhenTold(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
-	_, err := study.Run(ctx, sample(t, "edit-suite"), study.Options{}, nil, func(*study.Result) { cancel() })
+	_, err := study.Run(ctx, testcase.Sample(t, "edit-suite"), study.Options{}, nil, func(*study.Result) { cancel() })
 	if !errors.Is(err, context.Canceled) {
 		t.Errorf("the error is %v, want that of the context", err)
 	}
@@ -114,7 +102,7 @@ func TestRunStopsWhenTold(t *testing.T) {
 
 // Without absorbers the treated curve is the bare one, to the bit.
 func TestNothingTreatsAnEmptyRoom(t *testing.T) {
-	p := sample(t, "edit-suite").WithoutAbsorber(0).WithoutAbsorber(0)
+	p := testcase.Sample(t, "edit-suite").WithoutAbsorber(0).WithoutAbsorber(0)
 	r := run(t, p, nil)
 	if !reflect.DeepEqual(r.Levels.Bare, r.Levels.Treated) {
 		t.Error("bare and treated levels differ")
@@ -129,7 +117,7 @@ func TestNothingTreatsAnEmptyRoom(t *testing.T) {
 // Every sample is a valid project whose poles are all found.
 func TestSamples(t *testing.T) {
 	for _, name := range samples.Names() {
-		r := run(t, sample(t, name), nil)
+		r := run(t, testcase.Sample(t, name), nil)
 		if r.PolesCounted != r.PolesFound {
 			t.Errorf("%s: %d poles counted, %d followed", name, r.PolesCounted, r.PolesFound)
 		}
@@ -142,7 +130,7 @@ func TestSamples(t *testing.T) {
 // What the tuner proposes for the worst problem below 100 Hz can be built where it
 // says, meets the mode, and lets it ring less.
 func TestTunerProposesWhatHelps(t *testing.T) {
-	p := sample(t, "edit-suite").WithoutAbsorber(0).WithoutAbsorber(0)
+	p := testcase.Sample(t, "edit-suite").WithoutAbsorber(0).WithoutAbsorber(0)
 	r := run(t, p, nil)
 	mode := -1
 	for i, m := range r.Modes {
@@ -182,7 +170,7 @@ func TestTunerProposesWhatHelps(t *testing.T) {
 }
 
 func benchmarkDrag(b *testing.B, points int) {
-	p := sample(b, "edit-suite")
+	p := testcase.Sample(b, "edit-suite")
 	r, err := study.Run(context.Background(), p, study.Options{Points: points, ModesToHz: 250}, nil, nil)
 	if err != nil {
 		b.Fatal(err)
@@ -202,7 +190,7 @@ func BenchmarkWallDrag(b *testing.B) { benchmarkDrag(b, 400) }
 
 // BenchmarkComplete is a whole study, poles and all.
 func BenchmarkComplete(b *testing.B) {
-	p := sample(b, "edit-suite")
+	p := testcase.Sample(b, "edit-suite")
 	for b.Loop() {
 		if _, err := study.Run(context.Background(), p, study.Options{Points: 400}, nil, nil); err != nil {
 			b.Fatal(err)
@@ -212,7 +200,7 @@ func BenchmarkComplete(b *testing.B) {
 
 // The spread over the seats is between them.
 func TestLevelsSpreadOverSeats(t *testing.T) {
-	p := sample(t, "listening-room")
+	p := testcase.Sample(t, "listening-room")
 	l, err := study.Level(p, study.Options{Points: 30})
 	if err != nil {
 		t.Fatal(err)
