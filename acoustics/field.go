@@ -68,6 +68,7 @@ type modeTable struct {
 	share   []float64 // 1/(VΛ_n), 1/m³
 	tail    []float64 // mean of δ/c over the modes from n on, weighted as they enter S_2
 	uniform float64   // δ_0/c of the uniform mode, 1/m
+	orders  [3]int    // highest on each axis
 }
 
 // NewField places loudspeakers, seats and units in a room and works out the
@@ -121,6 +122,9 @@ func newModeTable(r Room, upTo float64) modeTable {
 			loss: make([]float64, n), share: make([]float64, n), tail: make([]float64, n+1)}
 	)
 	for i, m := range damped {
+		for axis, order := range m.Order {
+			t.orders[axis] = max(t.orders[axis], order)
+		}
 		k := 2 * math.Pi * m.Hz / c
 		t.k2[i], t.inverse[i] = k*k, 1/(k*k)
 		t.loss[i] = m.Damping.Total() / c
@@ -180,24 +184,27 @@ func (f *Field) weigh(ctx context.Context, former *Field) error {
 
 // portWeights returns û of one port for every mode, by a table of each axis.
 func (f *Field) portWeights(port [3]span) []float64 {
-	var along [3][]float64
-	for axis, l := range f.room.Box.Dimensions() {
-		most := 0
-		for _, m := range f.modes.damped {
-			most = max(most, m.Order[axis])
-		}
-		t := make([]float64, most+1)
+	w := make([]float64, len(f.modes.damped))
+	along := f.room.Box.axisMeans(port, f.modes.orders)
+	for i := range f.modes.damped {
+		n := &f.modes.damped[i].Order
+		w[i] = along[0][n[0]] * along[1][n[1]] * along[2][n[2]]
+	}
+	return w
+}
+
+// axisMeans returns, for each axis, the mean of cos(nπx/l) over a port's extent for
+// the orders n from 0 to the highest given.
+func (b Box) axisMeans(port [3]span, highest [3]int) (along [3][]float64) {
+	for axis, l := range b.Dimensions() {
+		t := make([]float64, highest[axis]+1)
 		t[0] = 1
-		for n := 1; n <= most; n++ {
+		for n := 1; n < len(t); n++ {
 			t[n] = port[axis].meanCos(float64(n) * math.Pi / l)
 		}
 		along[axis] = t
 	}
-	w := make([]float64, len(f.modes.damped))
-	for i, m := range f.modes.damped {
-		w[i] = along[0][m.Order[0]] * along[1][m.Order[1]] * along[2][m.Order[2]]
-	}
-	return w
+	return along
 }
 
 // sumStatics works out the static sums of all pairs that are ever asked for:

@@ -12,6 +12,10 @@ import (
 type Pole struct {
 	Oscillator           // natural frequency |ω|/2π and decay Im ω
 	LevelDB    []float64 // per seat: 20 log10(4π·|residue|/Im ω); NaN for nothing
+	// Omega is the complex angular frequency, 1/s, and Residues the residue there
+	// of the pressure at each seat per unit source, 0 for nothing.
+	Omega    complex128
+	Residues []complex128
 }
 
 // Poles are those of the treated room below the limit asked for, T60 ≥ 0.02 s.
@@ -192,9 +196,12 @@ func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rec
 			for i := w; i < len(paths) && ctx.Err() == nil; i += workers {
 				a := paths[i]
 				if a.found && imag(a.root) <= tallest && imag(a.root) > 0 {
+					residues := r.residues(&a)
 					shown[i] = &Pole{
 						Oscillator: Oscillator{Natural: cmplx.Abs(a.root) / (2 * math.Pi), Decay: imag(a.root)},
-						LevelDB:    r.residueLevels(&a),
+						LevelDB:    residueLevels(residues, a.root),
+						Omega:      a.root,
+						Residues:   residues,
 					}
 				}
 			}

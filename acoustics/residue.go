@@ -9,12 +9,9 @@ import (
 // the distance of any two roots that are told apart.
 const residueStep = 1e-7
 
-// residueLevels returns the level in dB of a pole's own peak at each seat,
-//
-//	20 log10(4π·|residue|/Im ω)
-//
-// NaN where it is nothing there.
-func (w *follower) residueLevels(a *path) []float64 {
+// residues returns the residue of the pressure at each seat at a pole, 0 where
+// the pole is nothing there.
+func (w *follower) residues(a *path) []complex128 {
 	if a.mode >= 0 {
 		return w.modeResidues(a)
 	}
@@ -28,7 +25,7 @@ func (w *follower) residueLevels(a *path) []float64 {
 //
 // with F the secular function and φ the mode's shape with the units in it, so
 // that the residue is φ_r·φ_s/(VΛ·F′).
-func (w *follower) modeResidues(a *path) []float64 {
+func (w *follower) modeResidues(a *path) []complex128 {
 	f := w.f
 	var (
 		h     = a.root * residueStep
@@ -53,19 +50,20 @@ func (w *follower) modeResidues(a *path) []float64 {
 		}
 		drive, whole = w.driven(wave)
 	)
-	levels := make([]float64, len(f.seats))
-	for e := range levels {
-		v := wave(len(f.sources)+e) * drive
-		levels[e] = w.level(v*complex(f.modes.share[a.mode], 0)/slope, a.root, cmplx.Abs(v) <= nothing*whole)
+	residues := make([]complex128, len(f.seats))
+	for e := range residues {
+		if v := wave(len(f.sources)+e) * drive; cmplx.Abs(v) > nothing*whole {
+			residues[e] = v * complex(f.modes.share[a.mode], 0) / slope
+		}
 	}
-	return levels
+	return residues
 }
 
 // unitResidues are those of a pole that a unit's resonance has become, from the
 // null vector x of the matrix A = Z + jωρG, which is symmetric: the residue is
 //
 //	−jωρ·(G_r·x)·(x·G_s)/(x·A′·x)
-func (w *follower) unitResidues(a *path) []float64 {
+func (w *follower) unitResidues(a *path) []complex128 {
 	f := w.f
 	r := len(f.units)
 	h := a.root * residueStep
@@ -109,12 +107,13 @@ func (w *follower) unitResidues(a *path) []float64 {
 		}
 		drive, whole = w.driven(wave)
 	)
-	levels := make([]float64, len(f.seats))
-	for e := range levels {
-		v := wave(len(f.sources)+e) * drive
-		levels[e] = w.level(-jwr*v/norm, a.root, cmplx.Abs(v) <= nothing*whole)
+	residues := make([]complex128, len(f.seats))
+	for e := range residues {
+		if v := wave(len(f.sources)+e) * drive; cmplx.Abs(v) > nothing*whole {
+			residues[e] = -jwr * v / norm
+		}
 	}
-	return levels
+	return residues
 }
 
 // driven returns a wave's value at the sources, each with its amplitude, added
@@ -133,10 +132,18 @@ func (w *follower) driven(wave func(port int) complex128) (sum complex128, whole
 	return sum, gains * most * most
 }
 
-// level returns the level of a residue at a root, NaN where it is nothing.
-func (w *follower) level(residue, root complex128, none bool) float64 {
-	if none {
-		return math.NaN()
+// residueLevels returns the level in dB of a pole's own peak at each seat,
+//
+//	20 log10(4π·|residue|/Im ω)
+//
+// NaN where it is nothing there.
+func residueLevels(residues []complex128, root complex128) []float64 {
+	levels := make([]float64, len(residues))
+	for e, v := range residues {
+		levels[e] = math.NaN()
+		if v != 0 {
+			levels[e] = 20 * math.Log10(4*math.Pi*cmplx.Abs(v)/imag(root))
+		}
 	}
-	return 20 * math.Log10(4*math.Pi*cmplx.Abs(residue)/imag(root))
+	return levels
 }

@@ -119,6 +119,7 @@ type statics struct {
 	ladder ladder
 	tables [3]*axisTable
 	modes  []Mode // those that still count in the long half
+	orders [3]int // highest of them on each axis
 	// long[j][n] is the factor of mode n in the long half of S_{j+1}, over VΛ.
 	long [3][]float64
 }
@@ -128,7 +129,7 @@ type statics struct {
 func newStatics(b Box, spans [][3]span, former *statics) *statics {
 	s := &statics{box: b}
 	if former != nil && former.box == b {
-		s.ladder, s.modes, s.long = former.ladder, former.modes, former.long
+		s.ladder, s.modes, s.orders, s.long = former.ladder, former.modes, former.orders, former.long
 	} else {
 		former = nil
 		s.ladder = newLadder(b)
@@ -162,6 +163,9 @@ func (s *statics) prepareLong() {
 		s.long[j] = make([]float64, len(s.modes))
 	}
 	for n, m := range s.modes {
+		for axis, order := range m.Order {
+			s.orders[axis] = max(s.orders[axis], order)
+		}
 		k2 := m.Hz * m.Hz
 		e := math.Exp(-k2*tau) / (v * m.Norm)
 		s.long[0][n] = e / k2
@@ -173,8 +177,10 @@ func (s *statics) prepareLong() {
 // weights returns û of a port for the modes of the long half.
 func (s *statics) weights(port [3]span) []float64 {
 	w := make([]float64, len(s.modes))
-	for n, m := range s.modes {
-		w[n] = meanOver(s.box, m, port)
+	along := s.box.axisMeans(port, s.orders)
+	for n := range s.modes {
+		o := &s.modes[n].Order
+		w[n] = along[0][o[0]] * along[1][o[1]] * along[2][o[2]]
 	}
 	return w
 }

@@ -60,7 +60,12 @@ func (v View) system() units.System {
 
 func (p *sheetPen) sheet(title string, ends, sides [2]string) {
 	p.ground()
-	p.pattern()
+	if m := p.levelMap(); m != nil {
+		p.loudness(m)
+		title = p.mapTitle(title, m)
+	} else {
+		p.pattern()
+	}
 	p.walls()
 	p.absorbers()
 	p.loudspeakers()

@@ -18,6 +18,7 @@ const (
 	DensityLane    Lane = "density"
 	LevelLane      Lane = "level"
 	DecayLane      Lane = "decay"
+	RingingLane    Lane = "ringing"
 	AbsorptionLane Lane = "absorption"
 )
 

@@ -19,7 +19,7 @@ import (
 
 func studied(t testing.TB, name string) *study.Result {
 	t.Helper()
-	r, err := study.Run(context.Background(), testcase.Sample(t, name), study.Options{ModesToHz: 250}, nil, nil)
+	r, err := study.Run(context.Background(), testcase.Sample(t, name), study.Options{ModesToHz: 250, Ringing: true}, nil, nil)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -70,7 +70,7 @@ func TestPicturesAreWrittenAndRepeat(t *testing.T) {
 	r := studied(t, "edit-suite")
 	v := figures.DefaultView(r)
 	v.Mode = 0
-	for _, name := range []string{"modes", "density", "level", "decay", "absorption", "plan", "section"} {
+	for _, name := range []string{"modes", "density", "level", "decay", "ringing", "absorption", "plan", "section"} {
 		for _, format := range figures.Formats() {
 			var a, b bytes.Buffer
 			if err := figures.Write(&a, format, name, r, v, figures.Print()); err != nil {
@@ -143,7 +143,7 @@ func BenchmarkPictures(b *testing.B) {
 	r := studied(b, "edit-suite")
 	v := figures.DefaultView(r)
 	v.Mode = 4
-	for _, name := range []string{"modes", "density", "level", "decay", "absorption", "plan", "section"} {
+	for _, name := range []string{"modes", "density", "level", "decay", "ringing", "absorption", "plan", "section"} {
 		b.Run(name, func(b *testing.B) {
 			style := figures.Paper()
 			style.Laid = true

@@ -25,6 +25,8 @@ func DrawLane(c draw.Canvas, lane Lane, r *study.Result, v View, s Style) {
 		p.level()
 	case DecayLane:
 		p.decay()
+	case RingingLane:
+		p.ringing()
 	case AbsorptionLane:
 		p.absorption()
 	}

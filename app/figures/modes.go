@@ -148,6 +148,8 @@ func LaneReading(lane Lane, r *study.Result, v View, hz float64) string {
 			}
 			return s + "  limit " + units.Seconds(m.LimitS)
 		}
+	case RingingLane:
+		return ringingReading(r, v, hz)
 	case AbsorptionLane:
 		if v.Absorber >= 0 && v.Absorber < len(r.Absorbers) {
 			a := r.Absorbers[v.Absorber]

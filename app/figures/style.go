@@ -46,7 +46,7 @@ func mix(a, b color.Color, share float64) color.Color {
 
 // Lanes returns the lanes in their order.
 func Lanes() []Lane {
-	return []Lane{ModesLane, DensityLane, LevelLane, DecayLane, AbsorptionLane}
+	return []Lane{ModesLane, DensityLane, LevelLane, DecayLane, RingingLane, AbsorptionLane}
 }
 
 // LaneNamed returns the lane of that name.
@@ -70,6 +70,8 @@ func (l Lane) Title() string {
 		return "Level at the seat, dB re free field at 1 m"
 	case DecayLane:
 		return "Decay, T60 in s"
+	case RingingLane:
+		return "Ringing at the seat, s after the sound stops"
 	default:
 		return "Absorption coefficient, diffuse field"
 	}

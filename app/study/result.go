@@ -15,6 +15,12 @@ type Options struct {
 	FromHz, ToHz float64 // range of the level curves, default 16…250 Hz
 	Points       int     // number of log-spaced points, both ends included, default 200
 	ModesToHz    float64 // modes are listed up to here, default 200 Hz
+	Ringing      bool    // Result.Ringing is wanted
+	// MapHz is the frequency at which Result.Plan and Result.Section are wanted, 0
+	// for none; they lie through the seat of index MapSeat, with about MapCells cells
+	// along the longer side, default 28.
+	MapHz             float64
+	MapSeat, MapCells int
 }
 
 // Stage says how much of a Result is there.
@@ -54,6 +60,13 @@ type Result struct {
 
 	// Reverberation is the diffuse-field estimate by octaves, 125 to 4000 Hz.
 	Reverberation []ReverberationRow
+
+	// Plan and Section are the level over the room at Options.MapHz; nil where they
+	// are not asked for.
+	Plan, Section *LevelMap
+	// Ringing is the decay in time; nil where Options do not ask for it and before
+	// StageTreated.
+	Ringing *Ringing
 
 	// Criteria are the published figures of merit of the bare room, its loudspeakers
 	// and its first seat.

@@ -22,7 +22,15 @@ func (o Options) withDefaults() Options {
 	if o.ModesToHz == 0 {
 		o.ModesToHz = 200
 	}
+	if o.MapCells == 0 {
+		o.MapCells = 28
+	}
 	return o
+}
+
+// levels returns the options that the levels depend on.
+func (o Options) levels() Options {
+	return Options{FromHz: o.FromHz, ToHz: o.ToHz, Points: o.Points, ModesToHz: o.ModesToHz}
 }
 
 // Run computes a project. Stages whose inputs are those of former, which may
@@ -62,9 +70,12 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 	r.judge(shell.criteria)
 	r.settle(field.field, kit.units)
 	r.assign(kit.units)
+	if err := r.mapStage(ctx, o, field); err != nil {
+		return nil, err
+	}
 	r.Stage = StageLevel
 	r.find()
-	r.stages = stages{shell: shell, kit: kit, field: field, poles: past.poles}
+	r.stages = stages{shell: shell, kit: kit, field: field, poles: past.poles, rings: past.rings}
 	progress(r.copied())
 
 	poles, err := polesStage(ctx, o, field, past.poles)
@@ -74,6 +85,10 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 	r = r.copied()
 	r.stages.poles = poles
 	r.takePoles(poles.poles)
+	if o.Ringing {
+		r.stages.rings = ringingStage(o, field, poles, past.rings)
+		r.Ringing = r.stages.rings.ringing
+	}
 	r.Stage = StageTreated
 	r.find()
 	return r, nil

@@ -19,6 +19,7 @@ type stages struct {
 	kit   *kitPart
 	field *fieldPart
 	poles *polesPart
+	rings *ringingPart
 }
 
 // shellPart is what shape, air, linings and limits decide.
@@ -169,13 +170,13 @@ type fieldPart struct {
 }
 
 func fieldStage(ctx context.Context, p project.Project, o Options, shell *shellPart, kit *kitPart, past *fieldPart) (*fieldPart, error) {
-	f := &fieldPart{shell: shell, kit: kit, sources: sources(p), seats: seats(p), options: o}
-	if past != nil && past.shell == shell && past.kit == kit && past.options == o &&
+	f := &fieldPart{shell: shell, kit: kit, sources: sources(p), seats: seats(p), options: o.levels()}
+	if past != nil && past.shell == shell && past.kit == kit && past.options == f.options &&
 		reflect.DeepEqual(past.sources, f.sources) && reflect.DeepEqual(past.seats, f.seats) {
 		return past, nil
 	}
 	var err error
-	if past != nil && past.shell == shell && past.options == o {
+	if past != nil && past.shell == shell && past.options == f.options {
 		f.field, err = past.field.Rearranged(ctx, f.sources, f.seats, kit.units)
 	} else {
 		f.field, err = acoustics.NewField(ctx, shell.room, f.sources, f.seats, kit.units, max(o.ToHz, o.ModesToHz))

@@ -11,9 +11,13 @@ import (
 	"stillroom/app/study"
 )
 
+// The frequencies at which a map of the level is drawn, Hz: those of the lanes.
+const lowestMapHz, highestMapHz = 5.0, 250.0
+
 func runFigure(c *call) error {
 	lane := c.flags.String("lane", "", "")
 	out := c.flags.String("out", "", "")
+	hz := c.flags.Float64("hz", 0, "")
 	file, err := c.parseFile()
 	if err != nil {
 		return err
@@ -29,11 +33,18 @@ func runFigure(c *call) error {
 	if !slices.Contains(figures.Formats(), format) {
 		return wrongf("--out must end in .png, .svg or .pdf, is %q", *out)
 	}
+	drawn := *lane == figures.PlanName || *lane == figures.SectionName
+	switch set := c.isSet("hz"); {
+	case set && !drawn:
+		return wrongf("--hz belongs to the plan and the section")
+	case set && !(*hz >= lowestMapHz && *hz <= highestMapHz):
+		return wrongf("--hz must be between %g and %g Hz, is %g", lowestMapHz, highestMapHz, *hz)
+	}
 	p, err := c.load(file)
 	if err != nil {
 		return err
 	}
-	r, err := c.study(p, study.Options{Points: 800, ModesToHz: 250})
+	r, err := c.study(p, study.Options{Points: 800, ModesToHz: 250, Ringing: *lane == string(figures.RingingLane), MapHz: *hz, MapCells: 60})
 	if err != nil {
 		return err
 	}
@@ -63,7 +74,7 @@ func runSheets(c *call) error {
 	if err != nil {
 		return err
 	}
-	r, err := c.study(p, study.Options{Points: 600})
+	r, err := c.study(p, study.Options{Points: 600, Ringing: true})
 	if err != nil {
 		return err
 	}

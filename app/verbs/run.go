@@ -43,7 +43,7 @@ func verbs() []verb {
 		{"absorbers", "absorbers FILE [--as text|csv|json]", "resonance, Q, absorption and ratings of each absorber", runAbsorbers},
 		{"check", "check FILE [--as text|csv|json]", "criteria: figure, limit, source, met or not", runCheck},
 		{"sheets", "sheets FILE --out FILE.pdf [--paper a4|letter] [--units metric|us]", "the printed set", runSheets},
-		{"figure", "figure FILE --lane NAME --out FILE.png|svg|pdf", "one lane or drawing as a picture", runFigure},
+		{"figure", "figure FILE --lane NAME [--hz HZ] --out FILE.png|svg|pdf", "one lane or drawing as a picture", runFigure},
 		{"sample", "sample [NAME]", "writes a sample project to the current folder", runSample},
 	}
 }
@@ -157,6 +157,13 @@ func (c *call) answer(as string, inJSON any, inCSV [][]string, inText func() err
 		return writeCSV(c.stdout, inCSV)
 	}
 	return inText()
+}
+
+// isSet reports whether an option was given.
+func (c *call) isSet(name string) bool {
+	set := false
+	c.flags.Visit(func(f *flag.Flag) { set = set || f.Name == name })
+	return set
 }
 
 // loadAs reads the options, checks the form asked for and reads the project
