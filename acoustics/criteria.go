@@ -60,18 +60,19 @@ func (c Criterion) WhatToDo() string {
 // Sources: each criterion's own.
 func (r Room) Criteria() []Criterion {
 	list := r.bonello()
+	list = append(list, r.spacing()...)
 	list = append(list, r.Box.proportions()...)
 	return append(list, r.statistics()...)
 }
 
 // bonello returns the two criteria of Bonello 1981 over the third octaves from 10
-// to 200 Hz, and how many neighbours overlap.
+// to 200 Hz.
 func (r Room) bonello() []Criterion {
 	var (
 		bands         = ThirdOctaves(10, 200)
 		modes         = r.Modes(bands[len(bands)-1].Upper)
 		before, falls = 0, 0
-		pairs, close  = 0, 0
+		pairs         = 0
 	)
 	for _, b := range bands {
 		var in []DampedMode
@@ -88,12 +89,6 @@ func (r Room) bonello() []Criterion {
 			pairs += coincidentPairs(in)
 		}
 	}
-	for i := 1; i < len(modes); i++ {
-		a, b := modes[i-1], modes[i]
-		if b.Hz-a.Hz < (a.Oscillator().HalfPowerWidth()+b.Oscillator().HalfPowerWidth())/2 {
-			close++
-		}
-	}
 	return []Criterion{
 		{ID: "bonello-counts", Title: "Third octaves in which the mode count falls, 10 to 200 Hz", Source: bonello1981,
 			Figure: float64(falls), Limit: 0, Unit: "bands", Verdict: verdict(falls == 0),
@@ -101,8 +96,6 @@ func (r Room) bonello() []Criterion {
 		{ID: "bonello-coincident", Title: "Coincident modes in bands of fewer than five", Source: bonello1981,
 			Figure: float64(pairs), Limit: 0, Unit: "pairs", Verdict: verdict(pairs == 0),
 			Advice: "Change a dimension by a few centimetres."},
-		{ID: "modes-overlapping", Title: "Neighbours closer than their half-power width, to 224 Hz", Source: "common practice",
-			Figure: float64(close), Limit: math.NaN(), Unit: "pairs"},
 	}
 }
 
@@ -193,53 +186,4 @@ func reverbAdvice(t, wanted float64) string {
 		return "Add absorption at middle frequencies."
 	}
 	return "Take absorption away, or make some of the surfaces hard."
-}
-
-// StereoCriteria returns the criteria of a pair of loudspeakers and a seat: base,
-// angle, distance and how far the loudspeakers stand from the walls.
-//
-// Source: ITU-R BS.1116-3, from memory.
-func (b Box) StereoCriteria(left, right, seat Point) []Criterion {
-	var (
-		base     = distance(left, right)
-		nearer   = math.Min(distance(left, seat), distance(right, seat))
-		further  = math.Max(distance(left, seat), distance(right, seat))
-		angle    = angleAt(seat, left, right) * 180 / math.Pi
-		clear    = math.Min(b.clearance(left), b.clearance(right))
-		distance = (nearer + further) / 2
-	)
-	return []Criterion{
-		{ID: "stereo-base-low", Title: "Base of the loudspeaker pair, at least", Source: bs1116, Figure: base, Limit: 2, Unit: "m",
-			Verdict: verdict(base >= 2), Advice: "Move the loudspeakers apart."},
-		{ID: "stereo-base-high", Title: "Base of the loudspeaker pair, at most", Source: bs1116, Figure: base, Limit: 3, Unit: "m",
-			Verdict: verdict(base <= 3), Advice: "Move the loudspeakers together."},
-		{ID: "stereo-angle", Title: "Angle of the pair at the seat, within 5° of", Source: bs1116, Figure: angle, Limit: 60, Unit: "°",
-			Verdict: verdict(math.Abs(angle-60) <= 5), Advice: "Make seat and pair a triangle of equal sides."},
-		{ID: "listening-distance-low", Title: "Listening distance, at least", Source: bs1116, Figure: distance, Limit: 2, Unit: "m",
-			Verdict: verdict(distance >= 2), Advice: "Move the seat further from the pair."},
-		{ID: "listening-distance-high", Title: "Listening distance, at most 1.7 times the base", Source: bs1116, Figure: distance, Limit: 1.7 * base, Unit: "m",
-			Verdict: verdict(distance <= 1.7*base), Advice: "Move the seat nearer to the pair."},
-		{ID: "stereo-symmetry", Title: "Difference of the two loudspeakers' distances from the seat", Source: "common practice",
-			Figure: further - nearer, Limit: 0.05, Unit: "m", Verdict: verdict(further-nearer <= 0.05), Advice: "Move the seat onto the pair's mid-plane."},
-		{ID: "loudspeaker-walls", Title: "Distance of a loudspeaker from the nearest wall, at least", Source: bs1116, Figure: clear, Limit: 1, Unit: "m",
-			Verdict: verdict(clear >= 1), Advice: "Move it away from the wall, or allow for it."},
-	}
-}
-
-// clearance returns the distance of a point from the nearest upright wall, m.
-func (b Box) clearance(p Point) float64 {
-	return math.Min(math.Min(p[0], b.Length-p[0]), math.Min(p[1], b.Width-p[1]))
-}
-
-func distance(a, b Point) float64 {
-	return math.Sqrt((a[0]-b[0])*(a[0]-b[0]) + (a[1]-b[1])*(a[1]-b[1]) + (a[2]-b[2])*(a[2]-b[2]))
-}
-
-// angleAt returns the angle in rad between two points as seen from a third.
-func angleAt(at, a, b Point) float64 {
-	var dot float64
-	for i := range at {
-		dot += (a[i] - at[i]) * (b[i] - at[i])
-	}
-	return math.Acos(math.Max(-1, math.Min(1, dot/(distance(at, a)*distance(at, b)))))
 }

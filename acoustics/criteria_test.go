@@ -23,7 +23,7 @@ func shell(l, w, h, alpha float64, t testing.TB) Room {
 
 // The order and the ids of the criteria are a promise.
 func TestCriteriaIDs(t *testing.T) {
-	want := []string{"bonello-counts", "bonello-coincident", "modes-overlapping", "ratio-low", "ratio-high", "length", "width",
+	want := []string{"bonello-counts", "bonello-coincident", "modes-overlapping", "spacing-mean", "spacing-deviation", "axial-spacing-least", "axial-spacing-widest", "ratio-low", "ratio-high", "length", "width",
 		"integer-ratio", "schroeder", "modal-overlap", "reverberation", "floor-area", "volume"}
 	list := shell(6, 4.5, 2.7, 0.1, t).Criteria()
 	if len(list) != len(want) {
@@ -141,7 +141,7 @@ func TestReverberationCriterion(t *testing.T) {
 }
 
 func TestStereoCriteria(t *testing.T) {
-	b := Box{6, 5, 2.7}
+	b := shell(6, 5, 2.7, 0.1, t)
 	// A triangle of equal sides of 2.4 m.
 	left, right := Point{1.2, 1.3, 1.2}, Point{1.2, 3.7, 1.2}
 	seat := Point{1.2 + 2.4*math.Sqrt(3)/2, 2.5, 1.2}
@@ -157,5 +157,63 @@ func TestStereoCriteria(t *testing.T) {
 		if c := criterion(t, b.StereoCriteria(Point{0.5, 1, 1.2}, Point{0.5, 1.9, 1.2}, Point{5.5, 3, 1.2}), id); c.Verdict != want {
 			t.Errorf("%s: %v against %v is %v, want %v", id, c.Figure, c.Limit, c.Verdict, want)
 		}
+	}
+}
+
+// A base typed as exactly 2 m meets the limit of 2 m.
+func TestLimitIsMetExactly(t *testing.T) {
+	r := shell(6, 5, 2.7, 0.1, t)
+	c := criterion(t, r.StereoCriteria(Point{1.3, 1.3, 1.2}, Point{1.3, 3.3, 1.2}, Point{3.6, 2.3, 1.2}), "stereo-base-low")
+	if c.Verdict != Met {
+		t.Errorf("a base of %v against %v is %v", c.Figure, c.Limit, c.Verdict)
+	}
+}
+
+// Reflections by hand: source and seat 1 m apart, both 1 m above the floor and
+// elsewhere far from everything: the floor's way is √(1 + 4) m.
+func TestEarlyReflectionsByHand(t *testing.T) {
+	r := shell(40, 40, 20, 0.2, t)
+	source, seat := Point{20, 20, 1}, Point{21, 20, 1}
+	list := r.EarlyReflections(source, seat)
+	e := list[Floor]
+	if want := 20*math.Log10(1/math.Sqrt(5)) + 10*math.Log10(0.8); math.Abs(e.LevelDB-want) > 1e-9 {
+		t.Errorf("the floor reflects at %.3f dB, by hand %.3f dB", e.LevelDB, want)
+	}
+	if want := (math.Sqrt(5) - 1) / r.Air.SpeedOfSound; !near(e.Delay, want, 1e-9) {
+		t.Errorf("after %v s, by hand %v s", e.Delay, want)
+	}
+	for i, want := range [3]float64{20.5, 20, 0} {
+		if math.Abs(e.At[i]-want) > 1e-9 {
+			t.Errorf("it strikes at %v", e.At)
+		}
+	}
+	// Each reflection's angles are alike: the way over the point struck is the
+	// image's, in any position.
+	source, seat = Point{3, 7, 1.3}, Point{11, 31, 2.2}
+	for _, e := range r.EarlyReflections(source, seat) {
+		if way := distance(source, e.At) + distance(e.At, seat); !near((way-distance(source, seat))/r.Air.SpeedOfSound, e.Delay, 1e-9) {
+			t.Errorf("%v: the way over %v is %v m", e.Surface, e.At, way)
+		}
+	}
+	// Two loudspeakers 0.3 m above a hard floor: it reflects at full strength.
+	hard := shell(8, 6, 3, 0.01, t)
+	c := criterion(t, hard.StereoCriteria(Point{2, 2, 0.3}, Point{2, 4, 0.3}, Point{4, 3, 0.3}), "early-reflections")
+	if c.Verdict != NotMet || c.Figure < -2 {
+		t.Errorf("near a hard floor: %v dB, %v", c.Figure, c.Verdict)
+	}
+}
+
+// A long tube has axial modes along it at even distances: c/2L apart.
+func TestSpacingOfATube(t *testing.T) {
+	r := shell(20, 0.5, 0.5, 0.1, t)
+	step := r.Air.SpeedOfSound / 40
+	list := r.Criteria()
+	for id, want := range map[string]float64{"spacing-mean": step, "spacing-deviation": 0, "axial-spacing-least": step, "axial-spacing-widest": step} {
+		if c := criterion(t, list, id); math.Abs(c.Figure-want) > 1e-9 {
+			t.Errorf("%s: %v, want %v", id, c.Figure, want)
+		}
+	}
+	if c := criterion(t, list, "axial-spacing-widest"); c.Verdict != Met {
+		t.Errorf("%v Hz apart is %v", c.Figure, c.Verdict)
 	}
 }

@@ -1,6 +1,7 @@
 package figures
 
 import (
+	"fmt"
 	"math"
 	"slices"
 
@@ -37,7 +38,7 @@ func DrawPlan(c draw.Canvas, r *study.Result, v View, s Style) {
 	if v.PlanAt != nil {
 		p.at = v.PlanAt.holding(r.Project.Room.Length, r.Project.Room.Width)
 	}
-	p.sheet("Plan", [2]string{"front", "back"}, [2]string{"left", "right"})
+	p.sheet("Plan", [4]acoustics.Surface{acoustics.Front, acoustics.Back, acoustics.Left, acoustics.Right})
 }
 
 // DrawSection draws the long section, seen from the left wall.
@@ -47,7 +48,7 @@ func DrawSection(c draw.Canvas, r *study.Result, v View, s Style) {
 	if v.SectionAt != nil {
 		p.at = v.SectionAt.holding(r.Project.Room.Length, r.Project.Room.Height)
 	}
-	p.sheet("Long section", [2]string{"", ""}, [2]string{"", ""})
+	p.sheet("Long section", [4]acoustics.Surface{acoustics.Front, acoustics.Back, acoustics.Floor, acoustics.Ceiling})
 }
 
 // system returns the view's units.
@@ -58,7 +59,9 @@ func (v View) system() units.System {
 	return units.Metric
 }
 
-func (p *sheetPen) sheet(title string, ends, sides [2]string) {
+// sheet draws everything; round are the surfaces at its left, right, lower and
+// upper edge.
+func (p *sheetPen) sheet(title string, round [4]acoustics.Surface) {
 	p.ground()
 	if m := p.levelMap(); m != nil {
 		p.loudness(m)
@@ -66,21 +69,14 @@ func (p *sheetPen) sheet(title string, ends, sides [2]string) {
 	} else {
 		p.pattern()
 	}
-	p.walls()
+	p.walls(round)
 	p.absorbers()
 	p.loudspeakers()
 	p.seats()
 	p.labels()
 	p.dimensions()
 	p.text(8*px, p.height()-9*px, title, p.s.Text, atLeft, p.s.Ink)
-	x0, y0 := p.at.To(0, 0)
-	x1, y1 := p.at.To(p.at.Width, p.at.Height)
-	faint := mix(p.s.Paper, p.s.Ink, 0.6)
-	small := p.s.Text * 0.85
-	p.upright(x0-12*px, (y0+y1)/2, ends[0], small, faint)
-	p.upright(x1+11*px, (y0+y1)/2, ends[1], small, faint)
-	p.text((x0+x1)/2, y1+11*px, sides[1], small, atMiddle, faint)
-	p.text((x0+x1)/2, y0-11*px, sides[0], small, atMiddle, faint)
+	p.linings(round, 8*px+p.measure(title, p.s.Text))
 }
 
 // dims returns the room's dimensions in axis order.
@@ -146,18 +142,62 @@ func PatternAt(m acoustics.Mode, p project.Project, up int, x, y float64, seat i
 		math.Cos(float64(m.Order[up])*math.Pi*y/p.Room.Dimension(up)) * factorAtSeat(m, p, 3-up, seat))
 }
 
-// walls draws the room's outline with the walls' thickness hinted.
-func (p *sheetPen) walls() {
+// wallThickness is how thick the walls are drawn.
+const wallThickness = 5 * px
+
+// walls draws the room's outline with the walls' thickness hinted; a selected one
+// stands out.
+func (p *sheetPen) walls(round [4]acoustics.Surface) {
 	x0, y0 := p.at.To(0, 0)
 	x1, y1 := p.at.To(p.at.Width, p.at.Height)
-	t := 5 * px
-	solid := mix(p.s.Paper, p.s.Ink, 0.28)
-	p.fill(x0-t, y0-t, x1+t, y0, solid)
-	p.fill(x0-t, y1, x1+t, y1+t, solid)
-	p.fill(x0-t, y0, x0, y1, solid)
-	p.fill(x1, y0, x1+t, y1, solid)
+	t := wallThickness
+	bands := [4]frame{{x0 - t, y0, x0, y1}, {x1, y0, x1 + t, y1}, {x0 - t, y0 - t, x1 + t, y0}, {x0 - t, y1, x1 + t, y1 + t}}
+	for k, b := range bands {
+		solid := mix(p.s.Paper, p.s.Ink, 0.28)
+		if int(round[k]) == p.v.Surface {
+			solid = p.s.Select
+		}
+		p.fill(b.x0, b.y0, b.x1, b.y1, solid)
+	}
 	p.outline(x0, y0, x1, y1, 1.4*px, p.s.Ink)
 	p.outline(x0-t, y0-t, x1+t, y1+t, p.s.Hair, p.s.Ink)
+}
+
+// linings letters each surface with its name and what it carries, as far as there
+// is room; taken is the stretch of the top edge that the title needs.
+func (p *sheetPen) linings(round [4]acoustics.Surface, taken vg.Length) {
+	x0, y0 := p.at.To(0, 0)
+	x1, y1 := p.at.To(p.at.Width, p.at.Height)
+	faint := mix(p.s.Paper, p.s.Ink, 0.6)
+	small := p.s.Text * 0.85
+	wide, high := x1-x0, y1-y0
+	p.upright(x0-12*px, (y0+y1)/2, p.fitted(liningWords(p.r.Project, round[0]), small, high), small, faint)
+	p.upright(x1+11*px, (y0+y1)/2, p.fitted(liningWords(p.r.Project, round[1]), small, high), small, faint)
+	p.text((x0+x1)/2, y0-11*px, p.fitted(liningWords(p.r.Project, round[2]), small, wide), small, atMiddle, faint)
+	// The upper edge shares its line with the title where the room fills the sheet.
+	name, x := p.fitted(liningWords(p.r.Project, round[3]), small, wide), (x0+x1)/2
+	if y := y1 + 11*px; y+small/2 > p.height()-16*px {
+		name = p.fitted(name, small, x1-max(x0, taken+12*px))
+		x = max(x, taken+12*px+p.measure(name, small)/2)
+	}
+	p.text(x, y1+11*px, name, small, atMiddle, faint)
+}
+
+// liningWords says what a surface is called and what it carries.
+func liningWords(p project.Project, s acoustics.Surface) string {
+	words := s.String() + ": "
+	lining := p.Lining(s)
+	for i, share := range lining {
+		if i > 0 {
+			words += ", "
+		}
+		f, _ := p.FinishByID(share.Finish)
+		words += f.Name
+		if len(lining) > 1 {
+			words += fmt.Sprintf(" %.0f %%", 100*share.Share)
+		}
+	}
+	return words
 }
 
 // AbsorberFrame returns the rectangle in metres that an absorber takes on a

@@ -31,6 +31,7 @@ type View struct {
 	Absorber     int // selected absorber's index, −1 for none
 	Loudspeaker  int // −1 for none
 	SelectedSeat int // −1 for none
+	Surface      int // selected acoustics.Surface, −1 for none
 	US           bool
 	Ruler        bool // draw the frequency scale under this lane
 	// PlanAt and SectionAt hold the drawings where they are while something is

@@ -2,6 +2,7 @@ package figures
 
 import (
 	"fmt"
+	"image/color"
 	"math"
 	"slices"
 
@@ -150,7 +151,8 @@ func (p lanePen) level() {
 	}
 	hi = math.Ceil(hi/10)*10 + 0.1
 	lo = math.Max(math.Floor(lo/10)*10, hi-60)
-	if len(p.r.Absorbers) > 0 {
+	many := len(l.Treated) > 1
+	if len(p.r.Absorbers) > 0 || many {
 		y1 -= legendRoom
 	}
 	a := scale{lo: lo, hi: hi, y0: y0, y1: y1}
@@ -166,7 +168,16 @@ func (p lanePen) level() {
 	} else {
 		p.curve(p.levelPoints(a, l.Bare[p.v.Seat]), 1.7*px, p.s.Slate)
 	}
-	p.legend([]entry{{"bare", p.s.Slate, len(p.r.Absorbers) > 0}, {"treated", p.s.Ochre, false}}, len(p.r.Absorbers) > 0)
+	var entries []entry
+	if len(p.r.Absorbers) > 0 {
+		entries = []entry{{"bare", p.s.Slate, []vg.Length{4 * px, 2.5 * px}}, {"treated", p.s.Ochre, nil}}
+	}
+	if many {
+		dots := []vg.Length{1.2 * px, 2.2 * px}
+		p.curve(p.levelPoints(a, l.Mean), 1.2*px, p.s.Ink, dots...)
+		entries = append(entries, entry{"mean of the seats, range shaded", p.s.Ink, dots})
+	}
+	p.legend(entries)
 }
 
 // spread lays the range of the treated levels over all seats under the curves.
@@ -199,16 +210,13 @@ const legendRoom = 14 * px
 
 // entry is one line of a legend.
 type entry struct {
-	name   string
-	ink    interface{ RGBA() (r, g, b, a uint32) }
-	dashed bool
+	name string
+	ink  color.Color
+	dash []vg.Length
 }
 
 // legend names the curves at the top right.
-func (p lanePen) legend(entries []entry, wanted bool) {
-	if !wanted {
-		return
-	}
+func (p lanePen) legend(entries []entry) {
 	_, _, x1, y1 := p.field()
 	x, y := x1-4*px, y1-7*px
 	for i := len(entries) - 1; i >= 0; i-- {
@@ -216,11 +224,7 @@ func (p lanePen) legend(entries []entry, wanted bool) {
 		w := p.measure(e.name, p.s.Text*0.92)
 		p.fill(x-w-30*px, y-6*px, x+2*px, y+6*px, p.s.Paper)
 		p.text(x, y, e.name, p.s.Text*0.92, atRight, p.s.Ink)
-		if e.dashed {
-			p.line(x-w-26*px, y, x-w-5*px, y, 1.3*px, e.ink, 4*px, 2.5*px)
-		} else {
-			p.line(x-w-26*px, y, x-w-5*px, y, 1.9*px, e.ink)
-		}
+		p.line(x-w-26*px, y, x-w-5*px, y, 1.6*px, e.ink, e.dash...)
 		x -= w + 38*px
 	}
 }

@@ -43,21 +43,25 @@ func (p *sheetPen) loudness(m *study.LevelMap) {
 	}
 }
 
-// highestLevel returns the top of the tones, a multiple of 3 dB. The half per cent
+// highestLevel returns the top of the tones, a multiple of 3 dB. The fiftieth
 // of the cells that lie nearest to loudspeakers, where the level has no bound, do
 // not count.
 func highestLevel(m *study.LevelMap) float64 {
 	levels := slices.Clone(m.Treated)
 	slices.Sort(levels)
-	return 3 * math.Ceil(levels[len(levels)-1-len(levels)/200]/3)
+	return 3 * math.Ceil(levels[len(levels)-1-len(levels)/50]/3)
 }
 
-// mapTitle says what a map shows.
+// mapTitle says what a map shows, in as many words as there is room for.
 func (p *sheetPen) mapTitle(title string, m *study.LevelMap) string {
-	where := "above the floor"
+	where, short := "above the floor", "up"
 	if m.Up == 2 {
-		where = "from the left wall"
+		where, short = "from the left wall", "from left"
 	}
-	return fmt.Sprintf("%s: level at %s, %s %s; 3 dB a tone, darkest %s", title, units.Hertz(m.Hz), units.Length(m.At, p.v.system()), where,
-		units.Decibels(highestLevel(m)))
+	hz, at, top := units.Hertz(m.Hz), units.Length(m.At, p.v.system()), units.Decibels(highestLevel(m))
+	long := fmt.Sprintf("%s: level at %s, %s %s; 3 dB a tone, darkest %s", title, hz, at, where, top)
+	if p.measure(long, p.s.Text) < p.width()-20*px {
+		return long
+	}
+	return fmt.Sprintf("%s, %s %s; 3 dB a tone to %s", hz, at, short, top)
 }

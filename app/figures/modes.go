@@ -135,7 +135,7 @@ func LaneReading(lane Lane, r *study.Result, v View, hz float64) string {
 				s += "  treated " + units.Decibels(r.Levels.Treated[v.Seat][i])
 			}
 			if len(r.Levels.Treated) > 1 {
-				s += fmt.Sprintf("  seats %s to %s", strings.TrimSuffix(units.Decibels(r.Levels.Lowest[i]), " dB"), units.Decibels(r.Levels.Highest[i]))
+				s += fmt.Sprintf("  all seats mean %s, %s to %s", units.Decibels(r.Levels.Mean[i]), strings.TrimSuffix(units.Decibels(r.Levels.Lowest[i]), " dB"), units.Decibels(r.Levels.Highest[i]))
 			}
 			return s
 		}

@@ -3,6 +3,7 @@ package figures
 import (
 	"image/color"
 	"math"
+	"strings"
 	"sync"
 
 	"codeberg.org/go-fonts/liberation/liberationsansbold"
@@ -170,6 +171,20 @@ func (p pen) upright(x, y vg.Length, s string, size vg.Length, col color.Color) 
 func (p pen) measure(s string, size vg.Length) vg.Length {
 	f := p.face(size, false)
 	return f.Width(s)
+}
+
+// fitted cuts a line with an ellipsis where it is wider than its room; nothing is
+// left where there is not even room for a few letters.
+func (p pen) fitted(s string, size, room vg.Length) string {
+	if p.measure(s, size) <= room {
+		return s
+	}
+	for runes := []rune(s); len(runes) > 3; runes = runes[:len(runes)-1] {
+		if cut := strings.TrimRight(string(runes), " ,:") + "…"; p.measure(cut, size) <= room {
+			return cut
+		}
+	}
+	return ""
 }
 
 // box returns the path of a rectangle.

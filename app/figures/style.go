@@ -79,7 +79,7 @@ func (l Lane) Title() string {
 
 // DefaultView returns the whole ruler with nothing selected.
 func DefaultView(r *study.Result) View {
-	return View{FromHz: r.Options.FromHz, ToHz: r.Options.ToHz, Mode: -1, Absorber: -1, Loudspeaker: -1, SelectedSeat: -1, Ruler: true}
+	return View{FromHz: r.Options.FromHz, ToHz: r.Options.ToHz, Mode: -1, Absorber: -1, Loudspeaker: -1, SelectedSeat: -1, Surface: -1, Ruler: true}
 }
 
 // LaneFrame returns the margins of every lane.

@@ -127,6 +127,40 @@ func (s *writer) lanes() {
 	}
 }
 
+// decayInTime is the sheet of what rings how long at each seat.
+func (s *writer) decayInTime() {
+	g := s.r.Ringing
+	if g == nil {
+		return
+	}
+	s.sheet = "Decay in time"
+	s.page()
+	v := figures.DefaultView(s.r)
+	s.heading(fmt.Sprintf("Ringing at seat %s, s after the sound stops", s.r.Project.Seats[0].ID))
+	height := (s.bottom() - margin) * 0.3
+	c, end := on(s.doc, margin, s.y, s.w-2*margin, height)
+	figures.DrawLane(c, figures.RingingLane, s.r, v, figures.Print())
+	end()
+	s.y += height + 6
+	s.heading("Energy decay by third octaves, seconds")
+	columns := []column{{"Band Hz", 0, true}, {"Seat", 0, false}, {"Early, bare", 0, true}, {"T20, bare", 0, true}, {"Early, treated", 0, true}, {"T20, treated", 0, true}, {"", 1, false}}
+	var rows [][]string
+	for _, b := range g.Bands {
+		for i, seat := range s.r.Project.Seats {
+			if b.Bare[i].T20 == 0 {
+				continue
+			}
+			row := []string{b.Nominal, seat.ID, fixed(b.Bare[i].Early, 2), fixed(b.Bare[i].T20, 2), "", "", ""}
+			if len(s.r.Absorbers) > 0 && b.Treated[i].T20 > 0 {
+				row[4], row[5] = fixed(b.Treated[i].Early, 2), fixed(b.Treated[i].T20, 2)
+			}
+			rows = append(rows, row)
+		}
+	}
+	s.table(columns, rows)
+	s.paragraph("Calculated from the room's oscillations by Schroeder's backward integration; early from 0 to −10 dB, T20 from −5 to −25 dB. Oscillations that last less than 0.02 s are left out. Where two poles beat or a slow one hides under fast ones, early and T20 differ, and neither is the T60 of one mode.", textSize)
+}
+
 // absorberList is the sheet the joiner builds from.
 func (s *writer) absorberList() {
 	s.sheet = "Absorbers"
@@ -178,7 +212,7 @@ func (s *writer) tolerances() {
 func (s *writer) criteria() {
 	s.sheet = "Criteria"
 	s.page()
-	s.heading("Criteria of the room without absorbers")
+	s.heading("Criteria, of the room without absorbers where nothing else is said")
 	var rows [][]string
 	for _, c := range s.r.Criteria {
 		rows = append(rows, []string{c.Verdict.String(), c.Title, Measured(c.Figure, c.Unit, s.sys), Measured(c.Limit, c.Unit, s.sys), c.WhatToDo(), c.Source})

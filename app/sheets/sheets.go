@@ -72,6 +72,7 @@ func Write(out io.Writer, r *study.Result, o Options) error {
 	s.criteria()
 	s.planAndSection()
 	s.lanes()
+	s.decayInTime()
 	s.absorberList()
 	s.cautions()
 	var b bytes.Buffer
@@ -138,6 +139,10 @@ func (s *writer) line(x, y, room float64, text string, size float64, style strin
 
 // heading writes a heading over what follows.
 func (s *writer) heading(text string) {
+	// It takes what it heads, the first lines at least, with it to a new page.
+	if s.y+75 > s.bottom() {
+		s.page()
+	}
 	s.y += 14
 	s.line(margin, s.y, s.w-2*margin, text, 11, "B")
 	s.y += 8

@@ -66,6 +66,10 @@ func (s *writer) table(columns []column, rows [][]string) {
 	for i, c := range columns {
 		heads[i] = c.head
 	}
+	// The headings do not stand alone at the foot of a page.
+	if len(rows) > 0 && s.y+s.rowHeight(edges, heads)+s.rowHeight(edges, rows[0]) > s.bottom() {
+		s.page()
+	}
 	s.row(columns, edges, heads, "B", true)
 	for i, r := range rows {
 		if s.y+s.rowHeight(edges, r) > s.bottom() {

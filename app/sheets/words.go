@@ -132,6 +132,10 @@ func Measured(v float64, unit string, s units.System) string {
 		return units.Volume(v, s)
 	case unit == "bands" || unit == "pairs" || unit == "modes":
 		return fmt.Sprintf("%.0f", v)
+	case unit == "dB":
+		return units.Decibels(v)
+	case unit == "Hz" && math.Abs(v) < 50:
+		return fmt.Sprintf("%.1f Hz", v)
 	case unit == "Hz" || unit == "°":
 		return strings.Replace(fmt.Sprintf("%.0f %s", v, unit), " °", "°", 1)
 	case unit == "":

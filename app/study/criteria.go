@@ -28,14 +28,28 @@ func (r *Result) judge(room []acoustics.Criterion) {
 		decay.Verdict = acoustics.NotMet
 	}
 	r.Criteria = append(slices.Clone(room), decay)
+	if len(r.Project.Absorbers) > 0 && r.Stage == StageTreated {
+		r.Criteria = append(r.Criteria, r.treatedDecay(decay))
+	}
 	if l := r.Project.Loudspeakers; len(l) == 2 {
-		r.Criteria = append(r.Criteria, r.Room.Box.StereoCriteria(l[0].At, l[1].At, r.Project.Seats[0].At)...)
+		r.Criteria = append(r.Criteria, r.Room.StereoCriteria(l[0].At, l[1].At, r.Project.Seats[0].At)...)
 	}
 }
 
-// Criteria computes only the criteria of a project: those of the bare room.
+// treatedDecay is the criterion of the modes' decay after treatment.
+func (r *Result) treatedDecay(bare acoustics.Criterion) acoustics.Criterion {
+	open, _ := r.problems()
+	c := bare
+	c.ID, c.Title = "modal-decay-treated", "Those of them that are over their limit when treated"
+	c.Figure, c.Verdict = float64(len(open)), acoustics.Met
+	if len(open) > 0 {
+		c.Verdict = acoustics.NotMet
+	}
+	return c
+}
+
+// Criteria computes only the criteria of a project.
 func Criteria(p project.Project) ([]acoustics.Criterion, error) {
-	p.Absorbers = nil
 	r, err := Run(context.Background(), p, Options{Points: 2}, nil, nil)
 	if err != nil {
 		return nil, err

@@ -31,10 +31,12 @@ func Level(p project.Project, o Options) (Levels, error) {
 func levelsOf(f *fieldPart) Levels {
 	l := Levels{Hz: f.hz, Bare: f.levels.Bare, Treated: f.levels.Treated}
 	for i := range f.hz {
-		lowest, highest := math.Inf(1), math.Inf(-1)
+		lowest, highest, power := math.Inf(1), math.Inf(-1), 0.0
 		for _, seat := range l.Treated {
+			power += math.Pow(10, seat[i]/10) / float64(len(l.Treated))
 			lowest, highest = math.Min(lowest, seat[i]), math.Max(highest, seat[i])
 		}
+		l.Mean = append(l.Mean, 10*math.Log10(power))
 		l.Lowest, l.Highest = append(l.Lowest, lowest), append(l.Highest, highest)
 	}
 	return l

@@ -50,3 +50,20 @@ func BenchmarkMaps(b *testing.B) {
 		}
 	}
 }
+
+// The mean over the seats is that of the squared pressures, within the range.
+func TestMeanOfTheSeats(t *testing.T) {
+	l, err := Level(testcase.Sample(t, "listening-room"), Options{Points: 30})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if len(l.Treated) != 2 {
+		t.Fatalf("%d seats, want 2", len(l.Treated))
+	}
+	for i := range l.Hz {
+		a, b := math.Pow(10, l.Treated[0][i]/10), math.Pow(10, l.Treated[1][i]/10)
+		if want := 10 * math.Log10((a+b)/2); math.Abs(l.Mean[i]-want) > 1e-9 || l.Mean[i] < l.Lowest[i] || l.Mean[i] > l.Highest[i] {
+			t.Errorf("%.1f Hz: mean %.3f dB of %.3f to %.3f dB, by hand %.3f dB", l.Hz[i], l.Mean[i], l.Lowest[i], l.Highest[i], want)
+		}
+	}
+}

@@ -133,8 +133,9 @@ type ReverberationRow struct {
 type Levels struct {
 	Hz            []float64
 	Bare, Treated [][]float64 // Treated equals Bare where there is no absorber; nil before StageLevel
-	// Lowest and Highest are the treated levels over all seats, indexed [frequency].
-	Lowest, Highest []float64
+	// Lowest, Highest and Mean are the treated levels over all seats, indexed
+	// [frequency]; the mean is that of the squared pressures.
+	Lowest, Highest, Mean []float64
 }
 
 // AbsorberRow is one absorber of the project.

@@ -90,6 +90,7 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 		r.Ringing = r.stages.rings.ringing
 	}
 	r.Stage = StageTreated
+	r.judge(shell.criteria)
 	r.find()
 	return r, nil
 }

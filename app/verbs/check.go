@@ -62,7 +62,7 @@ func checkText(c *call, list []acoustics.Criterion) error {
 			advice = append(advice, x.ID+": "+todo)
 		}
 	}
-	fmt.Fprintln(c.stdout, "Calculated of the room without absorbers. A figure without a limit is for information.")
+	fmt.Fprintln(c.stdout, "Calculated of the room without absorbers, where nothing else is said. A figure without a limit is for information.")
 	fmt.Fprintln(c.stdout)
 	if err := writeText(c.stdout, rows); err != nil {
 		return err

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 	"time"
 
@@ -12,6 +13,7 @@ import (
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 
+	"stillroom/app/figures"
 	"stillroom/app/project"
 	"stillroom/app/study"
 )
@@ -63,9 +65,9 @@ const slowStudy = 60 * time.Millisecond
 func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *controller {
 	c := &controller{app: a, win: w, do: do, settings: s, history: project.NewHistory(project.New(), true), started: time.Now(), judged: -1}
 	c.ctx, c.end = context.WithCancel(context.Background())
-	c.state = State{Selection: Selection{-1, -1, -1, -1, -1}, FromHz: rulerFrom, ToHz: rulerTo, US: s.US, Dark: s.Dark}
-	c.runner = &runner{do: do, options: study.Options{Points: 400, ModesToHz: 250}, show: c.result, busy: c.busy}
-	actions := Actions{Edit: c.edit, Select: c.selected, Ruler: c.ruler, Cursor: c.cursor, Dragging: c.dragging, Tune: c.tune, Ears: c.ears}
+	c.state = State{Selection: Selection{-1, -1, -1, -1, -1}, FromHz: rulerFrom, ToHz: rulerTo, US: s.US, Dark: s.Dark, Folded: s.Folded}
+	c.runner = &runner{do: do, show: c.result, busy: c.busy}
+	actions := Actions{Edit: c.edit, Select: c.selected, Ruler: c.ruler, Cursor: c.cursor, Dragging: c.dragging, Tune: c.tune, Fold: c.fold, Ears: c.ears}
 	c.easel = &easel{do: do}
 	c.easel.hung = func() { c.log("frame %d", c.easel.rounds) }
 	c.drawing = newDrawing(actions, c.easel)
@@ -147,7 +149,7 @@ func (c *controller) changed() {
 	c.state.Project = c.history.Current()
 	c.trimSelection()
 	c.edited = time.Now()
-	c.runner.submit(c.state.Project)
+	c.study()
 	if c.state.Dragging {
 		// The rest follows with the result, so that the window is painted once.
 		c.details.show(c.state)
@@ -159,6 +161,9 @@ func (c *controller) changed() {
 	c.title()
 	c.refresh()
 }
+
+// study asks for what the window shows of the document.
+func (c *controller) study() { c.runner.submit(c.state.Project, c.state.options()) }
 
 // trimSelection lets go of what is not there any more.
 func (c *controller) trimSelection() {
@@ -254,6 +259,9 @@ func (c *controller) selected(s Selection) {
 		}
 	}
 	c.refresh()
+	if c.state.Map {
+		c.study()
+	}
 	c.log("selected mode %d absorber %d loudspeaker %d seat %d", s.Mode, s.Absorber, s.Loudspeaker, s.Seat)
 }
 
@@ -286,12 +294,40 @@ func (c *controller) dragging(on bool) {
 	c.state.Dragging = on
 	if !on {
 		c.keep()
+		if c.state.Map {
+			c.study() // in full sharpness
+		}
 	}
 }
 
 func (c *controller) ears(seat int) {
 	c.state.Ears = seat
 	c.refresh()
+	if c.state.Map {
+		c.study()
+	}
+}
+
+// switchMap shows the level over the drawings, or the selected mode's pattern.
+func (c *controller) switchMap() {
+	c.state.Map = !c.state.Map
+	c.study()
+}
+
+// fold folds a lane, or folds it out.
+func (c *controller) fold(lane string) {
+	folded := slices.Clone(c.state.Folded)
+	if i := slices.Index(folded, lane); i >= 0 {
+		folded = slices.Delete(folded, i, i+1)
+	} else {
+		folded = append(folded, lane)
+	}
+	c.state.Folded, c.settings.Folded = folded, folded
+	c.settings.save()
+	c.lanes.show(c.state)
+	if lane == string(figures.RingingLane) {
+		c.study()
+	}
 }
 
 // showFinding writes the line of findings.

@@ -100,7 +100,7 @@ func (d *drawing) show(s State) {
 // view returns what the figures are asked to show.
 func (s State) view() figures.View {
 	return figures.View{FromHz: s.FromHz, ToHz: s.ToHz, Seat: s.ears(), Mode: s.Selection.Mode, Absorber: s.Selection.Absorber,
-		Loudspeaker: s.Selection.Loudspeaker, SelectedSeat: s.Selection.Seat, US: s.US}
+		Loudspeaker: s.Selection.Loudspeaker, SelectedSeat: s.Selection.Seat, Surface: s.Selection.Surface, US: s.US}
 }
 
 // ears returns the seat whose levels are shown, one that the result has.
@@ -455,12 +455,27 @@ func (d *drawing) MouseMoved(e *desktop.MouseEvent) {
 	if d.state.Result != nil && x >= 0 && x <= p.Room.Length && y >= 0 && y <= p.Room.Dimension(sheet+1) {
 		sys := d.state.system()
 		d.reading.Text = fmt.Sprintf("%s from front, %s from %s", units.Length(x, sys), units.Length(y, sys), [2]string{"left", "floor"}[sheet])
-		if m := d.state.Selection.Mode; m >= 0 && m < len(d.state.Result.Modes) {
-			mode := d.state.Result.Modes[m]
-			d.reading.Text += fmt.Sprintf("; mode %s %.0f %% of its greatest pressure here", mode.Mode, 100*figures.PatternAt(mode.Mode.Mode, p, sheet+1, x, y, d.state.Ears))
-		}
+		d.reading.Text += d.soundAt(sheet+1, x, y)
 	}
 	d.reading.Refresh()
+}
+
+// soundAt says how loud it is at a place of a sheet: of the map where it shows, else
+// of the selected mode.
+func (d *drawing) soundAt(up int, x, y float64) string {
+	p, r := d.state.Project, d.state.Result
+	level := r.Plan
+	if up == 2 {
+		level = r.Section
+	}
+	if level != nil {
+		return fmt.Sprintf("; %s at %s here", units.Decibels(level.Level(x, y, p.Room.Length, p.Room.Dimension(up))), units.Hertz(level.Hz))
+	}
+	if m := d.state.Selection.Mode; m >= 0 && m < len(r.Modes) {
+		mode := r.Modes[m]
+		return fmt.Sprintf("; mode %s %.0f %% of its greatest pressure here", mode.Mode, 100*figures.PatternAt(mode.Mode.Mode, p, up, x, y, d.state.Ears))
+	}
+	return ""
 }
 
 // MouseOut takes the reading away.

@@ -191,7 +191,7 @@ func (c *controller) writeSheets(path string, o sheets.Options) {
 	p := c.history.Current()
 	c.say("Writing " + path + " …")
 	c.background(func() error {
-		r, err := study.Run(c.ctx, p, study.Options{Points: 600}, nil, nil)
+		r, err := study.Run(c.ctx, p, study.Options{Points: 600, Ringing: true}, nil, nil)
 		if err != nil {
 			return err
 		}

@@ -38,6 +38,17 @@ func (d *details) roomForm() {
 		}
 		return fmt.Sprintf("%.0f Hz", d.state.Result.SchroederHz)
 	})
+	d.heading("Reverberation, estimated")
+	d.note(func() string {
+		if d.state.Result == nil {
+			return ""
+		}
+		t := []string{"Octave: Sabine, Eyring, Arau-Puchades"}
+		for _, row := range d.state.Result.Reverberation {
+			t = append(t, fmt.Sprintf("%s Hz: %.2f, %.2f, %.2f s", row.Nominal, row.Sabine, row.Eyring, row.ArauPuchades))
+		}
+		return strings.Join(append(t, "For a diffuse field, without absorbers: not meant below the Schroeder frequency."), "\n")
+	})
 	d.heading("Limit of a mode's decay")
 	names := []string{"heard in music", "heard in artificial signals"}
 	if len(d.state.Project.Limits.Points) > 0 {

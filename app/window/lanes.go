@@ -2,6 +2,7 @@ package window
 
 import (
 	"math"
+	"slices"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -28,7 +29,7 @@ type lane struct {
 	title   *canvas.Text
 	reading *canvas.Text
 	pic     *picture
-	folded  bool
+	folded  bool // as the state said last
 	weight  float32
 }
 
@@ -76,6 +77,9 @@ func (l *lanes) show(s State) {
 	style.Laid = true
 	l.cursor.StrokeColor = style.Ink
 	l.cursor.StrokeWidth = 1
+	for _, one := range l.list {
+		one.folded = slices.Contains(s.Folded, string(one.name))
+	}
 	for _, one := range l.list {
 		sign := "▾ "
 		if one.folded {
@@ -149,8 +153,7 @@ func (l *lanes) MouseDown(e *desktop.MouseEvent) {
 	for _, one := range l.list {
 		top := one.title.Position().Y
 		if e.Position.Y >= top && e.Position.Y < top+laneHead {
-			one.folded = !one.folded
-			l.show(l.state)
+			l.actions.Fold(string(one.name))
 			l.Refresh()
 			return
 		}

@@ -15,15 +15,14 @@ import (
 // come to their end and only complete results are shown. Its own goroutine takes
 // up the next project at once; only results go through do to the UI goroutine.
 type runner struct {
-	do      func(func())
-	options study.Options
+	do func(func())
 	// show is given each result, complete or not; nil with an error. busy is told
 	// when work begins or ends. Both are called on the UI goroutine.
 	show func(*study.Result, error)
 	busy func(bool)
 
 	mutex   sync.Mutex
-	next    *project.Project
+	next    *request
 	fresh   bool // forget the former result first
 	running bool
 	levels  bool // the run has come as far as the levels
@@ -37,14 +36,20 @@ type runner struct {
 	least time.Duration
 }
 
+// request is a project to be studied and how far.
+type request struct {
+	project project.Project
+	options study.Options
+}
+
 // quick is how long a run may take and still let a drag follow whole.
 const quick = 50 * time.Millisecond
 
 // submit asks for a project to be studied.
-func (r *runner) submit(p project.Project) {
+func (r *runner) submit(p project.Project, o study.Options) {
 	r.mutex.Lock()
 	defer r.mutex.Unlock()
-	r.next = &p
+	r.next = &request{p, o}
 	if r.running {
 		if r.levels {
 			r.cancel()
@@ -83,7 +88,7 @@ func (r *runner) work() {
 			r.do(func() { r.rested() })
 			return
 		}
-		p := *r.next
+		next := *r.next
 		r.next, r.levels = nil, false
 		if r.fresh {
 			r.former, r.fresh, r.least = nil, false, 0
@@ -91,17 +96,17 @@ func (r *runner) work() {
 		ctx, cancel := context.WithCancel(context.Background())
 		r.cancel = cancel
 		r.mutex.Unlock()
-		r.former = r.run(ctx, p, r.former)
+		r.former = r.run(ctx, next, r.former)
 		cancel()
 	}
 }
 
 // run studies one project and returns the furthest result it has.
-func (r *runner) run(ctx context.Context, p project.Project, former *study.Result) *study.Result {
+func (r *runner) run(ctx context.Context, q request, former *study.Result) *study.Result {
 	start := time.Now()
 	cold := former == nil
 	whole := !cold && r.least > 0 && r.least < quick
-	result, err := study.Run(ctx, p, r.options, former, func(partial *study.Result) {
+	result, err := study.Run(ctx, q.project, q.options, former, func(partial *study.Result) {
 		former = partial
 		if whole {
 			return

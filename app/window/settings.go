@@ -9,6 +9,7 @@ import (
 
 	"github.com/adrg/xdg"
 
+	"stillroom/app/figures"
 	"stillroom/app/project"
 )
 
@@ -20,6 +21,7 @@ type settings struct {
 	Details       bool // folded out
 	US, Dark      bool
 	Recent        []string
+	Folded        []string // lanes
 
 	path string // "" keeps nothing
 }
@@ -28,7 +30,8 @@ type settings struct {
 const mostRecent = 8
 
 func defaultSettings() *settings {
-	return &settings{Width: 1280, Height: 780, Outer: 0.78, Inner: 0.42, Lower: 0.72, Details: true}
+	return &settings{Width: 1280, Height: 780, Outer: 0.78, Inner: 0.42, Lower: 0.72, Details: true,
+		Folded: []string{string(figures.RingingLane)}}
 }
 
 // loadSettings reads the settings; what is missing or broken has its default.

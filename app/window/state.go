@@ -3,6 +3,9 @@
 package window
 
 import (
+	"slices"
+
+	"stillroom/app/figures"
 	"stillroom/app/project"
 	"stillroom/app/study"
 )
@@ -28,8 +31,10 @@ type State struct {
 	Ears      int     // the seat whose levels are shown
 	FromHz    float64 // the ruler
 	ToHz      float64
-	CursorHz  float64 // the common cursor, 0 for none
-	US        bool    // feet and inches
+	CursorHz  float64  // the common cursor, 0 for none
+	Map       bool     // the drawings show the level at the selected mode's frequency
+	Folded    []string // names of the lanes that are folded
+	US        bool     // feet and inches
 	Dark      bool
 }
 
@@ -48,6 +53,40 @@ type Actions struct {
 	Dragging func(bool)
 	// Tune asks for an absorber tuned to the mode of that index.
 	Tune func(mode int)
+	// Fold folds a lane or folds it out again.
+	Fold func(lane string)
 	// Ears chooses the seat whose levels are shown.
 	Ears func(seat int)
+}
+
+// dragCells is how fine the map of the level is while something is dragged.
+const dragCells = 14
+
+// options returns how far the study has to go for what the window shows.
+func (s State) options() study.Options {
+	o := study.Options{Points: 400, ModesToHz: 250, Ringing: !slices.Contains(s.Folded, string(figures.RingingLane))}
+	if s.Map {
+		o.MapHz, o.MapSeat = s.mapHz(), s.ears()
+	}
+	if s.Dragging {
+		o.MapCells = dragCells
+	}
+	return o
+}
+
+// mapHz returns the frequency of the map of the level: the selected mode's, else
+// the worst problem's, else the lowest mode's; 0 where none is known yet.
+func (s State) mapHz() float64 {
+	if s.Result == nil || len(s.Result.Modes) == 0 {
+		return 0
+	}
+	if m := s.Selection.Mode; m >= 0 && m < len(s.Result.Modes) {
+		return s.Result.Modes[m].Mode.Hz
+	}
+	for _, m := range s.Result.Modes {
+		if m.Rank == 1 {
+			return m.Mode.Hz
+		}
+	}
+	return s.Result.Modes[0].Mode.Hz
 }

@@ -16,6 +16,7 @@ import (
 	"fyne.io/fyne/v2/test"
 	"fyne.io/fyne/v2/widget"
 
+	"stillroom/acoustics"
 	"stillroom/app/figures"
 	"stillroom/app/project"
 	"stillroom/samples"
@@ -672,11 +673,56 @@ func TestPicturesFollowTheirSize(t *testing.T) {
 		h.win.Canvas().Capture()
 		h.until("the pictures are drawn", func() bool { return !h.easel.busy && len(h.queue) == 0 })
 		for _, one := range h.lanes.list {
+			if one.folded {
+				continue
+			}
 			if b := one.pic.shown.Bounds(); b.Dx() != one.pic.w || b.Dy() != one.pic.h || b.Dx() < 100 {
 				t.Errorf("%v: the lane %s is drawn %d × %d, wanted %d × %d", size, one.name, b.Dx(), b.Dy(), one.pic.w, one.pic.h)
 			}
 		}
 	}
+}
+
+// The ringing is calculated when its lane is folded out, by its heading.
+func TestRingingIsFoldedOut(t *testing.T) {
+	h := open(t)
+	if h.state.Result.Ringing != nil {
+		t.Fatal("the ringing is calculated, though its lane is folded")
+	}
+	for _, one := range h.lanes.list {
+		if one.name == figures.RingingLane {
+			at := one.title.Position().AddXY(5, 5)
+			h.lanes.MouseDown(&desktop.MouseEvent{PointEvent: fyne.PointEvent{Position: at}, Button: desktop.MouseButtonPrimary})
+		}
+	}
+	h.until("the ringing is there", func() bool { return h.state.Result.Ringing != nil })
+	if slices.Contains(h.settings.Folded, string(figures.RingingLane)) {
+		t.Error("the settings still have the lane folded")
+	}
+	h.cursor(63)
+	for _, one := range h.lanes.list {
+		if one.name == figures.RingingLane && !strings.Contains(one.reading.Text, "T20") {
+			t.Errorf("its reading is %q", one.reading.Text)
+		}
+	}
+}
+
+// The map of the level follows the selected mode, is coarse in a drag and sharp
+// after it.
+func TestMapFollows(t *testing.T) {
+	h := open(t)
+	h.switchMap()
+	h.selectMode(4)
+	at := func() float64 { return h.state.Result.Modes[4].Mode.Hz }
+	h.until("the map is of the selected mode", func() bool { p := h.state.Result.Plan; return p != nil && p.Hz == at() })
+	fine := h.state.Result.Plan.Columns
+	h.dragging(true)
+	h.edit("move", h.history.Current().WithSeat(0, project.Seat{ID: "desk", At: acoustics.Point{3, 2, 1.2}}), "drag", false)
+	h.until("the map is coarse", func() bool { return h.state.Result.Plan.Columns < fine })
+	h.dragging(false)
+	h.until("the map is sharp", func() bool { return h.state.Result.Plan.Columns == fine })
+	h.switchMap()
+	h.until("the map is gone", func() bool { return h.state.Result.Plan == nil })
 }
 
 // Nothing is laid over anything else, and no text leaves the window, at the
