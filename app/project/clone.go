@@ -21,7 +21,8 @@ func (p Project) Clone() Project {
 		p.Absorbers[i] = p.Absorbers[i].Clone()
 	}
 	p.Limits.Points = slices.Clone(p.Limits.Points)
-	return p
+	p.KeepOut = slices.Clone(p.KeepOut)
+	return p.WithStock(p.Stock)
 }
 
 // copied returns a pointer to a copy, nil for nil.

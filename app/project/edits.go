@@ -54,6 +54,18 @@ func (p Project) WithDimension(axis int, m float64, near bool) Project {
 		}
 		p.Absorbers[i] = p.Room.Onto(a)
 	}
+	p.KeepOut = slices.Clone(p.KeepOut)
+	for i, k := range p.KeepOut {
+		a := Absorber{Surface: k.Surface, Centre: k.Centre, Size: k.Size, Units: 1}
+		for n, x := range a.axes() {
+			if x == axis {
+				a.Centre[n] += shift
+			}
+			a.Size[n] = math.Min(a.Size[n], p.Room.Dimension(x))
+		}
+		a = p.Room.Onto(a)
+		p.KeepOut[i].Centre, p.KeepOut[i].Size = a.Centre, a.Size
+	}
 	return p
 }
 

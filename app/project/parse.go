@@ -104,7 +104,7 @@ func (r *reader) project(root *node) Project {
 		{key: "prepared_for", to: &p.PreparedFor},
 		{key: "prepared_by", to: &p.PreparedBy},
 		{key: "note", to: &p.Note},
-	}, "air", "room", "finishes", "loudspeakers", "seats", "absorbers", "limits")
+	}, "air", "room", "finishes", "loudspeakers", "seats", "absorbers", "limits", "keep_out", "stock")
 	if n := root.get("air"); n != nil {
 		r.object("air", n, p.Air.fields())
 	}
@@ -137,6 +137,7 @@ func (r *reader) project(root *node) Project {
 	if n := root.get("limits"); n != nil {
 		r.limits(n, &p.Limits)
 	}
+	r.extras(root, &p)
 	nameUnnamed(&p, root)
 	return p
 }

@@ -42,7 +42,11 @@ const whole = `{
      "microperforated": {"panel_mm": 0.8, "hole_mm": 0.5, "pitch_mm": 4, "cavity_mm": 100, "partitioned": false}},
     {"id": "W", "kind": "porous", "surface": "floor", "centre_m": [5, 4], "size_m": [1, 1], "units": 1,
      "porous": {"thickness_mm": 100, "flow_pa_s_m2": 8000, "gap_mm": 50, "porosity": 0.98, "tortuosity": 1, "viscous_um": 90, "thermal_um": 180}}],
-  "limits": {"decay": [[50, 0.6], [200, 0.2]]}
+  "limits": {"decay": [[50, 0.6], [200, 0.2]]},
+  "keep_out": [{"note": "door", "surface": "right", "centre_m": [5, 1], "size_m": [0.9, 2]}],
+  "stock": {"sheets": [{"name": "our ply", "source": "weighed", "mass_kg_m2": 4.1, "thickness_mm": 6.5, "youngs_gpa": 6, "poisson": 0.3, "loss_factor": 0.02}],
+    "tubes": [{"name": "duct", "source": "", "outside_mm": 100, "inside_mm": 96}],
+    "wools": [{"name": "felt", "source": "", "thickness_mm": 20, "flow_pa_s_m2": 20000}]}
 }`
 
 func problemsOf(t *testing.T, data string) Errors {
@@ -97,7 +101,7 @@ func TestRoundTrip(t *testing.T) {
 	}
 	// Nothing of the input is lost: each literal number and word is in the output.
 	for _, word := range []string{`"gain_db": -3`, `"delay_ms": 2`, `"inverted": true`, `"31.5": 0.01`, `"at": "face"`, `"thermal_um": 180`,
-		`"share": 0.3`, `"gap_mm": 50`, `"partitioned": true`, `[50, 0.6]`, `"mouths": 2`, `"edge_pa_s_m": 1`, `"gauze_pa_s_m": 10`, `two\nlines`} {
+		`"share": 0.3`, `"gap_mm": 50`, `"partitioned": true`, `[50, 0.6]`, `"mouths": 2`, `"edge_pa_s_m": 1`, `"gauze_pa_s_m": 10`, `"inside_mm": 96`, `"note": "door"`, `"our ply"`, `two\nlines`} {
 		if !strings.Contains(string(once), word) {
 			t.Errorf("%s is lost", word)
 		}
@@ -175,6 +179,12 @@ func TestParseRefuses(t *testing.T) {
 		{"hole as wide as its pitch", with(t, `"hole_mm": 6`, `"hole_mm": 30`), "absorbers[2].perforated.hole_mm", "smaller than the pitch"},
 		{"three of four fluid figures", with(t, `"porosity": 0.97, `, ``), "absorbers[2].perforated.fill.porosity", "required where any"},
 		{"mouth wider than the box", with(t, `"mouth_diameter_mm": 100`, `"mouth_diameter_mm": 600`), "absorbers[0].neck.mouth_diameter_mm", "fit"},
+		{"area off its wall", with(t, `"centre_m": [5, 1], "size_m": [0.9, 2]`, `"centre_m": [5.8, 1], "size_m": [0.9, 2]`), "keep_out[0].centre_m[0]", "lie on the surface"},
+		{"area of no wall", with(t, `"note": "door", "surface": "right"`, `"note": "door", "surface": "wall"`), "keep_out[0].surface", "must be one of"},
+		{"heavy sheet", with(t, `"mass_kg_m2": 4.1`, `"mass_kg_m2": 410`), "stock.sheets[0].mass_kg_m2", "between 0.1 and 200"},
+		{"tube inside out", with(t, `"inside_mm": 96`, `"inside_mm": 100`), "stock.tubes[0].inside_mm", "smaller than outside_mm, 100"},
+		{"nameless wool", with(t, `"name": "felt"`, `"name": ""`), "stock.wools[0].name", "not be empty"},
+		{"unknown stock", with(t, `"wools": [`, `"woods": [`), "stock.woods", "wools"},
 		{"unknown curve", with(t, `"decay": [[50, 0.6], [200, 0.2]]`, `"decay": "loud"`), "limits.decay", "music-2015"},
 		{"falling curve", with(t, `[200, 0.2]`, `[20, 0.2]`), "limits.decay[1][0]", "rise"},
 		{"no point in the curve", with(t, `[[50, 0.6], [200, 0.2]]`, `[]`), "limits.decay", "at least one"},

@@ -23,6 +23,8 @@ type Project struct {
 	Seats        []Seat
 	Absorbers    []Absorber
 	Limits       Limits
+	KeepOut      []KeepOut // where no proposal may stand
+	Stock        Stock     // of the user's own
 }
 
 // Air is the state of the air.

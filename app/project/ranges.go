@@ -89,6 +89,18 @@ func buildRanges() map[string]Range {
 		"absorbers[].porous.flow_pa_s_m2": flowRange,
 		"absorbers[].porous.gap_mm":       {0, 2000},
 
+		"keep_out[].size_m[]": sizeRange,
+
+		"stock.sheets[].mass_kg_m2":   {0.1, 200},
+		"stock.sheets[].thickness_mm": sheetRange,
+		"stock.sheets[].youngs_gpa":   {0, 1000}, // 0: limp
+		"stock.sheets[].poisson":      {0, 0.5},
+		"stock.sheets[].loss_factor":  {0, 2},
+		"stock.tubes[].outside_mm":    {5, 1000},
+		"stock.tubes[].inside_mm":     {5, 1000},
+		"stock.wools[].thickness_mm":  depthRange,
+		"stock.wools[].flow_pa_s_m2":  flowRange,
+
 		"limits.decay[][0]": {1, 20_000},
 		"limits.decay[][1]": {0.01, 100},
 	}

@@ -119,6 +119,7 @@ func (c *checker) project(p Project) {
 	c.seats(p)
 	c.absorbers(p)
 	c.limits(p.Limits)
+	c.extras(p)
 }
 
 // fields checks the range of each number among the fields.

@@ -25,6 +25,7 @@ func (p Project) Marshal() []byte {
 	root.add("seats", writeList(p.Seats, func(s Seat) *node { return write(s.fields()) }))
 	root.add("absorbers", writeList(p.Absorbers, Absorber.node))
 	root.add("limits", p.Limits.node())
+	p.writeExtras(root)
 	var b bytes.Buffer
 	root.print(&b, "")
 	b.WriteByte('\n')
