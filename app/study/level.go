@@ -19,7 +19,7 @@ func Level(p project.Project, o Options) (Levels, error) {
 	if err != nil {
 		return Levels{}, err
 	}
-	kit := newKit(p, shell.room.Air, nil, false)
+	kit := newKit(p, shell.room.Air, 90, nil, false)
 	field, err := fieldStage(ctx, p, o, shell, kit, nil)
 	if err != nil {
 		return Levels{}, err
@@ -42,11 +42,12 @@ func levelsOf(f *fieldPart) Levels {
 	return l
 }
 
-// Absorbers computes only the absorbers of a project on their own.
-func Absorbers(p project.Project) ([]AbsorberRow, error) {
+// Absorbers computes only the absorbers of a project on their own, in a diffuse
+// field up to an angle of incidence in degrees.
+func Absorbers(p project.Project, fieldDeg float64) ([]AbsorberRow, error) {
 	air, err := airOf(p)
 	if err != nil {
 		return nil, err
 	}
-	return newKit(p, air, nil, true).rows, nil
+	return newKit(p, air, fieldDeg, nil, true).rows, nil
 }

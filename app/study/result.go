@@ -16,6 +16,9 @@ type Options struct {
 	Points       int     // number of log-spaced points, both ends included, default 200
 	ModesToHz    float64 // modes are listed up to here, default 200 Hz
 	Ringing      bool    // Result.Ringing is wanted
+	// FieldDeg is the greatest angle of incidence of the diffuse field for the
+	// absorbers' coefficients, degrees; default 90, building practice has 78.
+	FieldDeg float64
 	// MapHz is the frequency at which Result.Plan and Result.Section are wanted, 0
 	// for none; they lie through the seat of index MapSeat, with about MapCells cells
 	// along the longer side, default 28.
@@ -151,6 +154,9 @@ type AbsorberRow struct {
 	// Target is the index in Modes of the mode it is nearest tuned to and couples
 	// with; −1 where there is none.
 	Target int
+	// Section is what one unit takes in at its resonance, alone in a wall; nil where it
+	// has none or is not small beside the wave.
+	Section *resonators.CrossSection
 	// Derivatives of f0 and Q with its dimensions.
 	Sensitivities []resonators.Sensitivity
 }

@@ -22,6 +22,9 @@ func (o Options) withDefaults() Options {
 	if o.ModesToHz == 0 {
 		o.ModesToHz = 200
 	}
+	if o.FieldDeg == 0 {
+		o.FieldDeg = 90
+	}
 	if o.MapCells == 0 {
 		o.MapCells = 28
 	}
@@ -56,7 +59,7 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 	if err != nil {
 		return nil, err
 	}
-	kit := kitStage(p, shell.room.Air, past.kit)
+	kit := kitStage(p, shell.room.Air, o.FieldDeg, past.kit)
 	if err := ctx.Err(); err != nil {
 		return nil, err
 	}

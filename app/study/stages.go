@@ -107,29 +107,33 @@ func tooLarge(p project.Project, hz, most float64) error {
 type kitPart struct {
 	absorbers []project.Absorber
 	air       acoustics.Air
+	fieldDeg  float64
 	rows      []AbsorberRow
 	units     []acoustics.Unit
 }
 
-func kitStage(p project.Project, air acoustics.Air, past *kitPart) *kitPart {
-	if past != nil && past.air == air && reflect.DeepEqual(past.absorbers, p.Absorbers) {
+func kitStage(p project.Project, air acoustics.Air, fieldDeg float64, past *kitPart) *kitPart {
+	if past != nil && past.air == air && past.fieldDeg == fieldDeg && reflect.DeepEqual(past.absorbers, p.Absorbers) {
 		return past
 	}
-	return newKit(p, air, past, true)
+	return newKit(p, air, fieldDeg, past, true)
 }
 
 // newKit makes the absorbers' rows and units; without reports where only the
 // units are wanted.
-func newKit(p project.Project, air acoustics.Air, past *kitPart, reports bool) *kitPart {
-	k := &kitPart{absorbers: p.Absorbers, air: air}
+func newKit(p project.Project, air acoustics.Air, fieldDeg float64, past *kitPart, reports bool) *kitPart {
+	k := &kitPart{absorbers: p.Absorbers, air: air, fieldDeg: fieldDeg}
 	for i, a := range p.Absorbers {
 		design := Design(a)
 		row := AbsorberRow{ID: a.ID, Kind: a.Kind, Design: design, Units: a.Units,
 			AreaM2: float64(a.Units) * a.Size[0] * a.Size[1], Target: -1}
-		if old := past.rowOf(a, air); old != nil {
-			row.Report, row.Sensitivities = old.Report, old.Sensitivities
+		if old := past.rowOf(a, air, fieldDeg); old != nil {
+			row.Report, row.Sensitivities, row.Section = old.Report, old.Sensitivities, old.Section
 		} else if reports {
-			row.Report = resonators.Analyse(design, air, a.Size)
+			row.Report = resonators.AnalyseWithin(design, air, a.Size, fieldDeg*math.Pi/180)
+			if s, ok := resonators.CrossSectionOf(design, air, a.Size, 1); ok {
+				row.Section = &s
+			}
 			row.Sensitivities = resonators.Sensitivities(design, air, a.Size)
 		}
 		k.rows = append(k.rows, row)
@@ -141,8 +145,8 @@ func newKit(p project.Project, air acoustics.Air, past *kitPart, reports bool) *
 
 // rowOf finds the row of an absorber of the same design and size in the same
 // air, wherever it stood.
-func (k *kitPart) rowOf(a project.Absorber, air acoustics.Air) *AbsorberRow {
-	if k == nil || k.air != air {
+func (k *kitPart) rowOf(a project.Absorber, air acoustics.Air, fieldDeg float64) *AbsorberRow {
+	if k == nil || k.air != air || k.fieldDeg != fieldDeg {
 		return nil
 	}
 	for i, b := range k.absorbers {

@@ -58,11 +58,16 @@ func absorberOf(a study.AbsorberRow) absorberJSON {
 }
 
 func runAbsorbers(c *call) error {
+	field := c.flags.String("field", "90", "")
 	p, as, err := c.loadAs()
 	if err != nil {
 		return err
 	}
-	rows, err := study.Absorbers(p)
+	if err := oneOf("field", *field, "90", "78"); err != nil {
+		return err
+	}
+	deg := map[string]float64{"90": 90, "78": 78}[*field]
+	rows, err := study.Absorbers(p, deg)
 	if err != nil {
 		return err
 	}
@@ -143,9 +148,28 @@ func absorbersText(c *call, rows []study.AbsorberRow) error {
 		return err
 	}
 	for _, a := range rows {
+		for _, line := range oscillatorText(a) {
+			fmt.Fprintf(c.stdout, "%s: %s\n", a.ID, line)
+		}
+	}
+	for _, a := range rows {
 		for _, w := range a.Report.Warnings {
 			fmt.Fprintf(c.stdout, "%s: %s\n", a.ID, w)
 		}
 	}
 	return nil
+}
+
+// oscillatorText says what mass, spring and loss an absorber is, and how near one
+// unit comes to what it could take in.
+func oscillatorText(a study.AbsorberRow) []string {
+	if a.Report.Oscillator == nil {
+		return nil
+	}
+	mass, spring, loss := a.Equivalent()
+	lines := []string{fmt.Sprintf("mass %s, spring %s, loss %s", mass, spring, loss)}
+	if s := a.Section; s != nil {
+		lines = append(lines, fmt.Sprintf("one unit alone in a wall takes in %.2f m² of a plane wave at %.1f Hz, %.0f %% of the ceiling λ²/2π", s.Area, s.Hz, 100*s.Area/s.Ceiling))
+	}
+	return lines
 }

@@ -40,7 +40,7 @@ func verbs() []verb {
 	return []verb{
 		{"modes", "modes FILE [--to HZ] [--seat ID] [--as text|csv|json]", "mode schedule, bare and treated", runModes},
 		{"level", "level FILE [--from HZ] [--to HZ] [--points N] [--seat ID] [--as csv|json]", "level at the seat, bare and treated", runLevel},
-		{"absorbers", "absorbers FILE [--as text|csv|json]", "resonance, Q, absorption and ratings of each absorber", runAbsorbers},
+		{"absorbers", "absorbers FILE [--field 90|78] [--as text|csv|json]", "resonance, Q, absorption and ratings of each absorber", runAbsorbers},
 		{"check", "check FILE [--as text|csv|json]", "criteria: figure, limit, source, met or not", runCheck},
 		{"sheets", "sheets FILE --out FILE.pdf [--paper a4|letter] [--units metric|us]", "the printed set", runSheets},
 		{"figure", "figure FILE --lane NAME [--hz HZ] --out FILE.png|svg|pdf", "one lane or drawing as a picture", runFigure},
