@@ -70,6 +70,7 @@ func (p *sheetPen) sheet(title string, round [4]acoustics.Surface) {
 		p.pattern()
 	}
 	p.walls(round)
+	p.keepOuts()
 	p.absorbers()
 	p.loudspeakers()
 	p.seats()
@@ -218,6 +219,38 @@ func AbsorberFrame(a project.Absorber, room project.Room, up int) (x0, y0, x1, y
 		to[n] = deep
 	}
 	return from[0], from[up], to[0], to[up], n == 3-up
+}
+
+// keepOuts crosses out the areas that are kept free, those that a wall's edge shows.
+func (p *sheetPen) keepOuts() {
+	room := p.r.Project.Room
+	for _, k := range p.r.Project.KeepOut {
+		a := project.Absorber{Surface: k.Surface, Centre: k.Centre, Size: k.Size, Units: 1}
+		mx0, my0, mx1, my1, flat := AbsorberFrame(a, room, p.up)
+		x0, y0 := p.at.To(mx0, my0)
+		x1, y1 := p.at.To(mx1, my1)
+		faint := mix(p.s.Paper, p.s.Ink, 0.5)
+		if flat {
+			p.outline(x0, y0, x1, y1, p.s.Hair, faint, 2*px, 2*px)
+			p.line(x0, y0, x1, y1, p.s.Hair, faint, 2*px, 2*px)
+			continue
+		}
+		// Along the wall, a line beside it with a tick at each end.
+		t := 3 * px
+		if x1-x0 < y1-y0 {
+			x := x0 + t
+			if k.Surface.Far() {
+				x = x0 - t
+			}
+			p.line(x, y0, x, y1, 2*px, faint)
+		} else {
+			y := y0 + t
+			if k.Surface.Far() {
+				y = y0 - t
+			}
+			p.line(x0, y, x1, y, 2*px, faint)
+		}
+	}
 }
 
 func (p *sheetPen) absorbers() {

@@ -7,6 +7,8 @@ import (
 	"image/color"
 
 	"gonum.org/v1/plot/vg"
+
+	"stillroom/app/study"
 )
 
 // Lane names a picture on the common frequency ruler.
@@ -33,6 +35,7 @@ type View struct {
 	SelectedSeat int // −1 for none
 	Surface      int // selected acoustics.Surface, −1 for none
 	US           bool
+	Kept         []study.AbsorberRow // absorbers' curves to compare with
 	Ruler        bool // draw the frequency scale under this lane
 	// PlanAt and SectionAt hold the drawings where they are while something is
 	// dragged; nil fits them to the canvas.

@@ -42,6 +42,7 @@ func (c *controller) commands() []command {
 		{menu: "View", label: "Night", key: fyne.KeyL, enabled: always, run: c.switchDark},
 		{menu: "View", label: "Feet and inches", key: fyne.KeyU, enabled: always, run: c.switchUnits},
 		{menu: "View", label: "Level over the drawing", key: fyne.KeyM, enabled: func() bool { return c.state.Result != nil }, run: c.switchMap},
+		{menu: "View", label: "Diffuse field to 78° or 90°", enabled: always, run: c.switchField},
 		{menu: "View", label: "Whole ruler", key: fyne.Key0, enabled: always, run: func() { c.ruler(rulerFrom, rulerTo) }},
 	}
 }

@@ -67,12 +67,12 @@ func newController(a fyne.App, w fyne.Window, s *settings, do func(func())) *con
 	c.ctx, c.end = context.WithCancel(context.Background())
 	c.state = State{Selection: Selection{-1, -1, -1, -1, -1}, FromHz: rulerFrom, ToHz: rulerTo, US: s.US, Dark: s.Dark, Folded: s.Folded}
 	c.runner = &runner{do: do, show: c.result, busy: c.busy}
-	actions := Actions{Edit: c.edit, Select: c.selected, Ruler: c.ruler, Cursor: c.cursor, Dragging: c.dragging, Tune: c.tune, Fold: c.fold, Ears: c.ears}
+	actions := Actions{Edit: c.edit, Select: c.selected, Ruler: c.ruler, Cursor: c.cursor, Dragging: c.dragging, Tune: c.tune, Fold: c.fold, Keep: c.keepCurve, Ears: c.ears}
 	c.easel = &easel{do: do}
 	c.easel.hung = func() { c.log("frame %d", c.easel.rounds) }
 	c.drawing = newDrawing(actions, c.easel)
 	c.lanes = newLanes(actions, c.easel)
-	c.details = newDetails(actions, c.chooseFinish)
+	c.details = newDetails(actions, c.easel, c)
 	c.modes = newSchedule(modeColumns(), c.selectMode)
 	c.absorbers = newSchedule(absorberColumns(), func(i int) {
 		c.selected(Selection{c.state.Selection.Mode, i, -1, -1, -1})
@@ -306,6 +306,26 @@ func (c *controller) ears(seat int) {
 	if c.state.Map {
 		c.study()
 	}
+}
+
+// keepCurve keeps an absorber's curve on the absorption lane, to compare what comes
+// after with it; −1 drops what is kept.
+func (c *controller) keepCurve(absorber int) {
+	switch r := c.state.Result; {
+	case absorber < 0:
+		c.state.Kept = nil
+	case r != nil && absorber < len(r.Absorbers):
+		row := r.Absorbers[absorber]
+		row.ID = fmt.Sprintf("%s kept", row.ID)
+		c.state.Kept = append(slices.Clone(c.state.Kept), row)
+	}
+	c.lanes.show(c.state)
+}
+
+// switchField takes the diffuse field to 78° or to 90°.
+func (c *controller) switchField() {
+	c.state.To78 = !c.state.To78
+	c.study()
 }
 
 // switchMap shows the level over the drawings, or the selected mode's pattern.

@@ -26,23 +26,32 @@ type subject struct {
 // details edits what is selected: fields with units, ranges and an error beside
 // the field that has one.
 type details struct {
-	actions  Actions
-	state    State
-	about    subject
-	shape    string // what the form was built for; another one is built anew
-	root     *fyne.Container
-	form     *fyne.Container
-	chooser  *widget.Select
-	names    []subject // in the order of the chooser
-	updates  []func()  // put the state's values into the form
-	fields   []*field
-	settled  bool // the chooser is being set by us
-	choose   func(current string, chosen func(id string))
+	actions Actions
+	state   State
+	about   subject
+	shape   string // what the form was built for; another one is built anew
+	root    *fyne.Container
+	form    *fyne.Container
+	chooser *widget.Select
+	names   []subject // in the order of the chooser
+	updates []func()  // put the state's values into the form
+	fields  []*field
+	settled bool // the chooser is being set by us
+	dialogs
+	easel    *easel
 	lastSeen Selection
 }
 
-func newDetails(a Actions, choose func(current string, chosen func(id string))) *details {
-	d := &details{actions: a, choose: choose, about: subject{kind: "room"}, form: container.NewVBox()}
+// dialogs is what the details ask the user by.
+type dialogs interface {
+	chooseFinish(current string, chosen func(id string))
+	pick(title string, rows []row, current string, chosen func(id string), more ...choice)
+	askName(title, hint string, done func(name, source string))
+	tell(title, text string)
+}
+
+func newDetails(a Actions, e *easel, by dialogs) *details {
+	d := &details{actions: a, easel: e, dialogs: by, about: subject{kind: "room"}, form: container.NewVBox()}
 	d.lastSeen = Selection{-1, -1, -1, -1, -1}
 	d.chooser = widget.NewSelect(nil, d.chosen)
 	scroll := container.NewVScroll(d.form)
@@ -169,10 +178,10 @@ func (d *details) signature() string {
 	s := fmt.Sprint(d.about, len(p.Loudspeakers), len(p.Seats), len(p.Absorbers), d.state.US, d.state.Dark)
 	switch d.about.kind {
 	case "surface":
-		s += fmt.Sprint(len(p.Lining(acoustics.Surface(d.about.index))))
+		s += fmt.Sprint(len(p.Lining(acoustics.Surface(d.about.index))), len(p.KeepOut))
 	case "absorber":
 		a := p.Absorbers[d.about.index]
-		s += a.Kind + fmt.Sprint(a.Surface, fillOf(a) != nil, a.Neck != nil && a.Neck.Fill != nil)
+		s += a.Kind + fmt.Sprint(a.Surface, fillOf(a) != nil, a.Neck != nil && a.Neck.Fill != nil, fillOf(a) != nil && fillOf(a).Fluid != nil, a.Porous != nil && a.Porous.Fluid != nil)
 	}
 	return s
 }

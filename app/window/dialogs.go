@@ -9,6 +9,8 @@ import (
 	"fyne.io/fyne/v2/layout"
 	"fyne.io/fyne/v2/widget"
 
+	"stillroom/app/project"
+	"stillroom/app/units"
 	"stillroom/assets"
 )
 
@@ -22,6 +24,16 @@ type choice struct {
 // ask shows a dialog with a body and answers; Esc means the last of them, Enter
 // the main one. focus, where not nil, is where typing begins.
 func (c *controller) ask(title string, body fyne.CanvasObject, size fyne.Size, focus fyne.Focusable, choices ...choice) func() {
+	return c.dialog(title, body, size, focus, false, choices)
+}
+
+// askOpen shows a dialog whose main answer leaves it open: it closes itself by the
+// function returned, once all is right.
+func (c *controller) askOpen(title string, body fyne.CanvasObject, size fyne.Size, focus fyne.Focusable, choices ...choice) func() {
+	return c.dialog(title, body, size, focus, true, choices)
+}
+
+func (c *controller) dialog(title string, body fyne.CanvasObject, size fyne.Size, focus fyne.Focusable, open bool, choices []choice) func() {
 	var box *dialog.CustomDialog
 	was := c.win.Canvas().OnTypedKey()
 	var first *answerButton
@@ -35,7 +47,9 @@ func (c *controller) ask(title string, body fyne.CanvasObject, size fyne.Size, f
 		box.Hide()
 	}
 	answer := func(x choice) {
-		hide()
+		if !x.main || !open {
+			hide()
+		}
 		if x.run != nil {
 			x.run()
 		}
@@ -176,16 +190,11 @@ func (c *controller) confirmOver(path string, yes func()) {
 	c.ask("Replace the file?", l, fyne.NewSize(480, 150), nil, choice{"Replace", true, yes}, choice{"Cancel", false, nil})
 }
 
-// chooseFinish lets one finish be picked among all, with a search.
-func (c *controller) chooseFinish(current string, chosen func(id string)) {
-	type item struct{ id, text, group, source string }
-	var all []item
-	for _, f := range c.state.Project.Finishes {
-		all = append(all, item{f.ID, f.Name, "the file's own", f.Source})
-	}
-	for _, f := range assets.Finishes() {
-		all = append(all, item{f.ID, f.Name, f.Group, f.Source})
-	}
+// row is one of many things to pick from.
+type row struct{ id, text, group, source string }
+
+// pick lets one row be picked among many, with a search; more are further answers.
+func (c *controller) pick(title string, all []row, current string, chosen func(id string), more ...choice) {
 	shown := all
 	list := widget.NewList(func() int { return len(shown) }, func() fyne.CanvasObject { return widget.NewLabel("") },
 		func(i widget.ListItemID, o fyne.CanvasObject) {
@@ -198,8 +207,13 @@ func (c *controller) chooseFinish(current string, chosen func(id string)) {
 		picked = shown[i].id
 		source.SetText("Source: " + shown[i].source)
 	}
+	done := func() {
+		if picked != "" {
+			chosen(picked)
+		}
+	}
 	var hide func()
-	search := newPathEntry("", func() { hide(); chosen(picked) }, func() { hide() })
+	search := newPathEntry("", func() { hide(); done() }, func() { hide() })
 	search.SetPlaceHolder("Search")
 	search.OnChanged = func(t string) {
 		shown = nil
@@ -212,6 +226,70 @@ func (c *controller) chooseFinish(current string, chosen func(id string)) {
 		list.Refresh()
 	}
 	body := container.NewBorder(search, source, nil, nil, list)
-	hide = c.ask("Choose a finish", body, fyne.NewSize(560, 520), search,
-		choice{"Choose", true, func() { chosen(picked) }}, choice{"Cancel", false, nil})
+	answers := append([]choice{{"Choose", true, done}}, more...)
+	hide = c.ask(title, body, fyne.NewSize(600, 540), search, append(answers, choice{"Cancel", false, nil})...)
+}
+
+// chooseFinish lets one finish be picked among all, or one of the user's own made.
+func (c *controller) chooseFinish(current string, chosen func(id string)) {
+	var all []row
+	for _, f := range c.state.Project.Finishes {
+		all = append(all, row{f.ID, f.Name, "the project's own", f.Source})
+	}
+	for _, f := range assets.Finishes() {
+		all = append(all, row{f.ID, f.Name, f.Group, f.Source})
+	}
+	c.pick("Choose a finish", all, current, chosen, choice{"Own finish…", false, func() { c.ownFinish(chosen) }})
+}
+
+// ownBands are the octaves that a finish of the user's own is given in.
+func ownBands() []string { return []string{"63", "125", "250", "500", "1000", "2000", "4000"} }
+
+// ownFinish asks for a finish of the user's own, adds it to the project and chooses
+// it. A band left empty is not given.
+func (c *controller) ownFinish(chosen func(id string)) {
+	f := project.Finish{ID: c.state.Project.FreshFinishID(), Absorption: map[string]float64{}}
+	say := widget.NewLabel("Random-incidence absorption coefficients by octave; an empty band is not given.")
+	say.Wrapping = fyne.TextWrapWord
+	var hide func()
+	entries := map[string]*pathEntry{}
+	var add func()
+	entry := func(name string) *pathEntry {
+		entries[name] = newPathEntry("", func() { add() }, func() { hide() })
+		return entries[name]
+	}
+	form := widget.NewForm(widget.NewFormItem("Name", entry("name")), widget.NewFormItem("Source", entry("source")))
+	for _, b := range ownBands() {
+		form.Append(b+" Hz", entry(b))
+	}
+	add = func() {
+		f.Name, f.Source = strings.TrimSpace(entries["name"].Text), strings.TrimSpace(entries["source"].Text)
+		clear(f.Absorption)
+		if f.Name == "" {
+			say.SetText("It needs a name.")
+			return
+		}
+		for _, b := range ownBands() {
+			text := strings.TrimSpace(entries[b].Text)
+			if text == "" {
+				continue
+			}
+			v, err := units.ParseNumber(text, "")
+			if err != nil {
+				say.SetText(b + " Hz: " + err.Error())
+				return
+			}
+			f.Absorption[b] = v
+		}
+		p := c.state.Project.AddFinish(f)
+		if errs := p.Validate(); len(errs) > 0 {
+			say.SetText(errs[0].Error())
+			return
+		}
+		hide()
+		c.edit("add a finish", p, "", true)
+		chosen(f.ID)
+	}
+	hide = c.askOpen("A finish of your own", container.NewVBox(say, form), fyne.NewSize(480, 520), entries["name"],
+		choice{"Add and choose", true, add}, choice{"Cancel", false, nil})
 }

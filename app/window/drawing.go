@@ -100,7 +100,7 @@ func (d *drawing) show(s State) {
 // view returns what the figures are asked to show.
 func (s State) view() figures.View {
 	return figures.View{FromHz: s.FromHz, ToHz: s.ToHz, Seat: s.ears(), Mode: s.Selection.Mode, Absorber: s.Selection.Absorber,
-		Loudspeaker: s.Selection.Loudspeaker, SelectedSeat: s.Selection.Seat, Surface: s.Selection.Surface, US: s.US}
+		Loudspeaker: s.Selection.Loudspeaker, Kept: s.Kept, SelectedSeat: s.Selection.Seat, Surface: s.Selection.Surface, US: s.US}
 }
 
 // ears returns the seat whose levels are shown, one that the result has.

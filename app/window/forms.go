@@ -11,7 +11,6 @@ import (
 
 	"stillroom/acoustics"
 	"stillroom/app/project"
-	"stillroom/app/sheets"
 	"stillroom/app/units"
 	"stillroom/assets"
 )
@@ -130,7 +129,7 @@ func (d *details) surfaceForm(s acoustics.Surface) {
 	for i, share := range d.state.Project.Lining(s) {
 		finish, _ := d.state.Project.FinishByID(share.Finish)
 		b := widget.NewButton(finish.Name, func() {
-			d.choose(d.state.Project.Lining(s)[i].Finish, func(id string) {
+			d.chooseFinish(d.state.Project.Lining(s)[i].Finish, func(id string) {
 				d.relined(s, func(l []project.FinishShare) []project.FinishShare { l[i].Finish = id; return l })
 			})
 		})
@@ -174,6 +173,35 @@ func (d *details) surfaceForm(s acoustics.Surface) {
 		}
 		return strings.Join(t, "\n") + "\nPublished coefficients below 125 Hz are scarce and uncertain; the lowest band's value is held."
 	})
+	d.keepOutFields(s)
+}
+
+// keepOutFields edits the areas of a surface that proposals leave free.
+func (d *details) keepOutFields(s acoustics.Surface) {
+	d.heading("Areas to keep free")
+	first, second := s.InPlane()
+	from := [3]string{"from front", "from left", "from floor"}
+	for i, k := range d.state.Project.KeepOut {
+		if k.Surface != s {
+			continue
+		}
+		path := fmt.Sprintf("keep_out[%d]", i)
+		d.text("What", path+".note", func(p *project.Project) *string { return &p.KeepOut[i].Note })
+		d.number("Centre "+from[first], path+".centre_m[0]", lengthM, func(p *project.Project) *float64 { return &p.KeepOut[i].Centre[0] })
+		d.number("Centre "+from[second], path+".centre_m[1]", lengthM, func(p *project.Project) *float64 { return &p.KeepOut[i].Centre[1] })
+		d.number("Along", path+".size_m[0]", lengthM, func(p *project.Project) *float64 { return &p.KeepOut[i].Size[0] })
+		d.number("Across", path+".size_m[1]", lengthM, func(p *project.Project) *float64 { return &p.KeepOut[i].Size[1] })
+		d.buttons(widget.NewButton("Remove this area", func() {
+			d.actions.Edit("remove area", d.state.Project.WithoutKeepOut(i), "", true)
+		}))
+	}
+	d.buttons(widget.NewButton("Add an area", func() {
+		p := d.state.Project
+		w, h := p.Room.Dimension(first), p.Room.Dimension(second)
+		k := project.KeepOut{Note: "door", Surface: s, Size: [2]float64{math.Min(0.9, w), math.Min(2, h)}}
+		k.Centre = [2]float64{tidy(w / 2), tidy(k.Size[1] / 2)}
+		d.actions.Edit("add area", p.AddKeepOut(k), "", true)
+	}))
 }
 
 // shareField edits one finish's share of a surface; the others make up the rest
@@ -292,196 +320,6 @@ func placed(p project.Project, a project.Absorber) (project.Project, bool) {
 		}
 	}
 	return p, false
-}
-
-func (d *details) absorberForm(i int) {
-	path := fmt.Sprintf("absorbers[%d]", i)
-	at := func(p *project.Project) *project.Absorber { return &p.Absorbers[i] }
-	a := d.state.Project.Absorbers[i]
-	d.heading("Absorber")
-	d.text("Id", path+".id", func(p *project.Project) *string { return &at(p).ID })
-	var kinds []string
-	for _, k := range project.Kinds() {
-		kinds = append(kinds, sheets.KindWords(k))
-	}
-	d.choice("Kind", kinds, func(p project.Project) int { return slices.Index(project.Kinds(), at(&p).Kind) },
-		func(p *project.Project, k int) { p.Absorbers[i] = at(p).OfKind(project.Kinds()[k]) })
-	var surfaces []string
-	for _, s := range acoustics.Surfaces() {
-		surfaces = append(surfaces, s.String())
-	}
-	d.choice("On the", surfaces, func(p project.Project) int { return int(at(&p).Surface) },
-		func(p *project.Project, s int) {
-			at(p).Surface = acoustics.Surface(s)
-			*at(p) = p.Room.Onto(*at(p))
-		})
-	first, second := a.Surface.InPlane()
-	from := [3]string{"from front", "from left", "from floor"}
-	d.number("Centre "+from[first], path+".centre_m[0]", lengthM, func(p *project.Project) *float64 { return &at(p).Centre[0] })
-	d.number("Centre "+from[second], path+".centre_m[1]", lengthM, func(p *project.Project) *float64 { return &at(p).Centre[1] })
-	d.number("Front along", path+".size_m[0]", lengthM, func(p *project.Project) *float64 { return &at(p).Size[0] })
-	d.number("Front across", path+".size_m[1]", lengthM, func(p *project.Project) *float64 { return &at(p).Size[1] })
-	d.whole("Units in a row", path+".units", func(p *project.Project) *int { return &at(p).Units })
-	d.heading("Dimensions")
-	d.kindFields(path, a.Kind, at)
-	d.heading("Calculated, alone")
-	d.absorberFigures(i)
-	d.buttons(widget.NewButton("Duplicate", func() {
-		p := d.state.Project
-		c := p.Absorbers[i].Clone()
-		c.ID = p.FreshAbsorberID()
-		if q, ok := placed(p, c); ok {
-			d.actions.Edit("duplicate absorber", q, "", true)
-			d.actions.Select(Selection{d.state.Selection.Mode, len(p.Absorbers), -1, -1, -1})
-		}
-	}), widget.NewButton("Remove", func() {
-		d.actions.Edit("remove absorber", d.state.Project.WithoutAbsorber(i), "", true)
-	}))
-}
-
-// fillOf returns the fill of a wide kind's cavity.
-func fillOf(a project.Absorber) *project.Fill {
-	switch {
-	case a.Panel != nil:
-		return a.Panel.Fill
-	case a.Perforated != nil:
-		return a.Perforated.Fill
-	case a.Slotted != nil:
-		return a.Slotted.Fill
-	}
-	return nil
-}
-
-func setFill(a *project.Absorber, f *project.Fill) {
-	switch {
-	case a.Panel != nil:
-		a.Panel.Fill = f
-	case a.Perforated != nil:
-		a.Perforated.Fill = f
-	case a.Slotted != nil:
-		a.Slotted.Fill = f
-	}
-}
-
-func cavityOf(a project.Absorber) float64 {
-	switch {
-	case a.Panel != nil:
-		return a.Panel.CavityMM
-	case a.Perforated != nil:
-		return a.Perforated.CavityMM
-	case a.Slotted != nil:
-		return a.Slotted.CavityMM
-	}
-	return 0
-}
-
-// kindFields adds the fields of one kind's block.
-func (d *details) kindFields(path, kind string, at func(*project.Project) *project.Absorber) {
-	path += "." + kind
-	num := func(name, key string, q quantity, of func(*project.Absorber) *float64) {
-		d.number(name, path+"."+key, q, func(p *project.Project) *float64 { return of(at(p)) })
-	}
-	gauze, flow := inUnit("Pa·s/m", 10), inUnit("Pa·s/m²", 500)
-	switch kind {
-	case "neck":
-		num("Air in the box", "cavity_l", inUnit("L", 1), func(a *project.Absorber) *float64 { return &a.Neck.CavityL })
-		num("Mouth, inside diameter", "mouth_diameter_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Neck.MouthDiameterMM })
-		num("Neck length", "length_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Neck.LengthMM })
-		d.whole("Necks", path+".mouths", func(p *project.Project) *int { return &at(p).Neck.Mouths })
-		num("Gauze", "gauze_pa_s_m", gauze, func(a *project.Absorber) *float64 { return &a.Neck.GauzePaSM })
-		d.check("Partly filled", func(p project.Project) bool { return at(&p).Neck != nil && at(&p).Neck.Fill != nil }, func(p *project.Project, on bool) {
-			at(p).Neck.Fill = nil
-			if on {
-				f := project.DefaultNeckFill()
-				at(p).Neck.Fill = &f
-			}
-		})
-		if p := d.state.Project; at(&p).Neck.Fill != nil {
-			num("Share filled", "fill.share", shareOfArea, func(a *project.Absorber) *float64 { return &a.Neck.Fill.Share })
-			num("Flow resistivity", "fill.flow_pa_s_m2", flow, func(a *project.Absorber) *float64 { return &a.Neck.Fill.FlowPaSM2 })
-		}
-	case "panel":
-		num("Sheet's mass", "mass_kg_m2", massKgM2, func(a *project.Absorber) *float64 { return &a.Panel.MassKgM2 })
-		num("Thickness", "thickness_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Panel.ThicknessMM })
-		num("Young's modulus", "youngs_gpa", inUnit("GPa", 0.5), func(a *project.Absorber) *float64 { return &a.Panel.YoungsGPa })
-		num("Poisson's ratio", "poisson", number, func(a *project.Absorber) *float64 { return &a.Panel.Poisson })
-		num("Loss factor", "loss_factor", quantity{step: 0.005}, func(a *project.Absorber) *float64 { return &a.Panel.LossFactor })
-		num("Cavity", "cavity_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Panel.CavityMM })
-		num("Edge loss", "edge_pa_s_m", gauze, func(a *project.Absorber) *float64 { return &a.Panel.EdgePaSM })
-	case "perforated":
-		num("Sheet", "panel_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Perforated.PanelMM })
-		num("Holes, diameter", "hole_mm", quantity{kind: millimetres, step: 0.5}, func(a *project.Absorber) *float64 { return &a.Perforated.HoleMM })
-		num("Square pitch", "pitch_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Perforated.PitchMM })
-		num("Cavity", "cavity_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Perforated.CavityMM })
-		num("Gauze", "gauze_pa_s_m", gauze, func(a *project.Absorber) *float64 { return &a.Perforated.GauzePaSM })
-		d.check("Cavity partitioned", func(p project.Project) bool { return at(&p).Perforated != nil && at(&p).Perforated.Partitioned },
-			func(p *project.Project, on bool) { at(p).Perforated.Partitioned = on })
-	case "slotted":
-		num("Slats", "slat_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Slotted.SlatMM })
-		num("Gaps", "slot_mm", quantity{kind: millimetres, step: 0.5}, func(a *project.Absorber) *float64 { return &a.Slotted.SlotMM })
-		num("Thickness", "panel_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Slotted.PanelMM })
-		num("Cavity", "cavity_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Slotted.CavityMM })
-		d.check("Cavity partitioned", func(p project.Project) bool { return at(&p).Slotted != nil && at(&p).Slotted.Partitioned },
-			func(p *project.Project, on bool) { at(p).Slotted.Partitioned = on })
-	case "microperforated":
-		num("Sheet", "panel_mm", quantity{kind: millimetres, step: 0.1}, func(a *project.Absorber) *float64 { return &a.Microperforated.PanelMM })
-		num("Holes, diameter", "hole_mm", quantity{kind: millimetres, step: 0.05}, func(a *project.Absorber) *float64 { return &a.Microperforated.HoleMM })
-		num("Square pitch", "pitch_mm", quantity{kind: millimetres, step: 0.1}, func(a *project.Absorber) *float64 { return &a.Microperforated.PitchMM })
-		num("Cavity", "cavity_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Microperforated.CavityMM })
-		d.check("Cavity partitioned", func(p project.Project) bool {
-			return at(&p).Microperforated != nil && at(&p).Microperforated.Partitioned
-		},
-			func(p *project.Project, on bool) { at(p).Microperforated.Partitioned = on })
-	case "porous":
-		num("Thickness", "thickness_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Porous.ThicknessMM })
-		num("Flow resistivity", "flow_pa_s_m2", flow, func(a *project.Absorber) *float64 { return &a.Porous.FlowPaSM2 })
-		num("Gap behind", "gap_mm", lengthMM, func(a *project.Absorber) *float64 { return &a.Porous.GapMM })
-	}
-	if kind == "panel" || kind == "perforated" || kind == "slotted" {
-		d.fillFields(path, at)
-	}
-}
-
-// fillFields adds the fill of a cavity.
-func (d *details) fillFields(path string, at func(*project.Project) *project.Absorber) {
-	d.check("Fill in the cavity", func(p project.Project) bool { return fillOf(*at(&p)) != nil }, func(p *project.Project, on bool) {
-		setFill(at(p), nil)
-		if on {
-			f := project.DefaultFill()
-			f.ThicknessMM = math.Min(f.ThicknessMM, cavityOf(*at(p)))
-			setFill(at(p), &f)
-		}
-	})
-	if p := d.state.Project; fillOf(*at(&p)) == nil {
-		return
-	}
-	d.number("Fill", path+".fill.thickness_mm", lengthMM, func(p *project.Project) *float64 { return &fillOf(*at(p)).ThicknessMM })
-	d.number("Flow resistivity", path+".fill.flow_pa_s_m2", inUnit("Pa·s/m²", 500), func(p *project.Project) *float64 { return &fillOf(*at(p)).FlowPaSM2 })
-	d.check("Fill touches the face", func(p project.Project) bool { f := fillOf(*at(&p)); return f != nil && f.AtFace },
-		func(p *project.Project, on bool) { fillOf(*at(p)).AtFace = on })
-}
-
-// absorberFigures shows what the absorber is calculated to do.
-func (d *details) absorberFigures(i int) {
-	d.note(func() string {
-		r := d.state.Result
-		if r == nil || i >= len(r.Absorbers) {
-			return ""
-		}
-		a := r.Absorbers[i]
-		var t []string
-		if o := a.Report.Oscillator; o != nil {
-			t = append(t, fmt.Sprintf("Resonance %.1f Hz, Q %.1f, ζ %.3f.", o.Natural, o.Q(), o.DampingRatio()), peakWords(*o),
-				fmt.Sprintf("Acts from %.0f to %.0f Hz.", a.Report.Band[0], a.Report.Band[1]))
-			for _, s := range a.Sensitivities {
-				words, steps := sheets.Step(s, d.state.system())
-				t = append(t, fmt.Sprintf("%s: %s Hz", words, signed(s.F0PerStep*steps, 2)))
-			}
-		} else {
-			t = append(t, "Broadband: there is no oscillator.")
-		}
-		return strings.Join(append(t, a.Report.Warnings...), "\n")
-	})
 }
 
 func peakWords(o acoustics.Oscillator) string {

@@ -31,10 +31,12 @@ type State struct {
 	Ears      int     // the seat whose levels are shown
 	FromHz    float64 // the ruler
 	ToHz      float64
-	CursorHz  float64  // the common cursor, 0 for none
-	Map       bool     // the drawings show the level at the selected mode's frequency
-	Folded    []string // names of the lanes that are folded
-	US        bool     // feet and inches
+	CursorHz  float64             // the common cursor, 0 for none
+	Map       bool                // the drawings show the level at the selected mode's frequency
+	To78      bool                // the diffuse field ends at 78°
+	Kept      []study.AbsorberRow // curves kept for comparison
+	Folded    []string            // names of the lanes that are folded
+	US        bool                // feet and inches
 	Dark      bool
 }
 
@@ -55,6 +57,8 @@ type Actions struct {
 	Tune func(mode int)
 	// Fold folds a lane or folds it out again.
 	Fold func(lane string)
+	// Keep keeps an absorber's curve for comparison; −1 drops all that is kept.
+	Keep func(absorber int)
 	// Ears chooses the seat whose levels are shown.
 	Ears func(seat int)
 }
@@ -67,6 +71,9 @@ func (s State) options() study.Options {
 	o := study.Options{Points: 400, ModesToHz: 250, Ringing: !slices.Contains(s.Folded, string(figures.RingingLane))}
 	if s.Map {
 		o.MapHz, o.MapSeat = s.mapHz(), s.ears()
+	}
+	if s.To78 {
+		o.FieldDeg = 78
 	}
 	if s.Dragging {
 		o.MapCells = dragCells
