@@ -76,7 +76,7 @@ func (f *Field) fitDistant(d *distant, t *transfer) {
 		for at := range pairs {
 			// The discrete cosine transform, a point's share at a time.
 			for j := range d.terms {
-				d.factors[at*d.terms+j] += (t.gamma[at] - t.base) * complex(2/float64(d.terms)*math.Cos(float64(j)*angle), 0)
+				d.factors[at*d.terms+j] += (t.gamma[at] - t.base*complex(f.uniform[at], 0)) * complex(2/float64(d.terms)*math.Cos(float64(j)*angle), 0)
 			}
 		}
 	}

@@ -55,6 +55,10 @@ type Field struct {
 	spans   [][3]span
 	weights [][]float64 // [port][mode]
 	sums    []staticSums
+	unity   []float64 // [port]: of the uniform mode, 1 but for patterns
+	uniform []float64 // [pair]: product of both
+	raw     rawPorts  // before the tiles of wide absorbers were condensed
+	loose   []looseUnit
 	statics *statics
 	long    [][]float64 // [port]: weights in the static sums' long half
 }
@@ -103,7 +107,11 @@ func newField(ctx context.Context, r Room, sources []Source, seats []Point, unit
 	if err := f.weigh(ctx, former); err != nil {
 		return nil, err
 	}
-	return f, f.sumStatics(ctx, former)
+	if err := f.sumStatics(ctx, former); err != nil {
+		return nil, err
+	}
+	f.condense()
+	return f, nil
 }
 
 // lowestHz returns the frequency of the lowest mode.
@@ -171,7 +179,7 @@ func (f *Field) weigh(ctx context.Context, former *Field) error {
 	f.weights = make([][]float64, len(f.spans))
 	for p, s := range f.spans {
 		if i, ok := known[s]; ok {
-			f.weights[p] = former.weights[i]
+			f.weights[p] = former.rawWeights(i)
 			continue
 		}
 		if err := ctx.Err(); err != nil {
@@ -181,6 +189,9 @@ func (f *Field) weigh(ctx context.Context, former *Field) error {
 	}
 	return nil
 }
+
+// rawWeights returns û of the port of that index among the spans.
+func (f *Field) rawWeights(port int) []float64 { return f.raw.weights[port] }
 
 // portWeights returns û of one port for every mode, by a table of each axis.
 func (f *Field) portWeights(port [3]span) []float64 {
@@ -214,8 +225,8 @@ func (f *Field) sumStatics(ctx context.Context, former *Field) error {
 	known := map[[2][3]span]staticSums{}
 	if former != nil {
 		past = former.statics
-		former.eachPair(func(p, q, at int) {
-			known[[2][3]span{former.spans[p], former.spans[q]}] = former.sums[at]
+		eachPairOf(len(former.raw.units), len(former.sources), len(former.seats), func(p, q, at int) {
+			known[[2][3]span{former.spans[p], former.spans[q]}] = former.raw.sums[at]
 		})
 	}
 	f.statics = newStatics(f.room.Box, f.spans, past)
@@ -255,7 +266,11 @@ func (f *Field) pairs() int {
 // up to itself, then each source and seat with each unit, then each seat with
 // each source.
 func (f *Field) eachPair(visit func(p, q, at int)) {
-	r, s, e := len(f.units), len(f.sources), len(f.seats)
+	eachPairOf(len(f.units), len(f.sources), len(f.seats), visit)
+}
+
+// eachPairOf visits the pairs of r units, s sources and e seats.
+func eachPairOf(r, s, e int, visit func(p, q, at int)) {
 	at := 0
 	for p := range r + s + e {
 		last := min(p+1, r)

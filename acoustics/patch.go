@@ -103,4 +103,7 @@ type Unit struct {
 	Natural float64
 	// Owner is the index of the absorber the unit belongs to.
 	Owner int
+	// Tile says that the unit is one of several alike that a wide absorber is cut
+	// into: those of one owner have one size and one impedance.
+	Tile bool
 }

@@ -216,6 +216,7 @@ func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rec
 			p.Absorbers = append(p.Absorbers, AbsorberPole{Pole: *shown[i], Owner: f.units[a.unit].Owner})
 		}
 	}
+	p.Absorbers = append(p.Absorbers, f.loosePoles(upTo)...)
 	sortPoles(p.Absorbers)
 	return p, ctx.Err()
 }

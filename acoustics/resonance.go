@@ -61,5 +61,5 @@ func (u Unit) resonance(load, density float64) (hz float64, exists bool) {
 // its place, with the static air mass that the room puts before it and
 // everything else of the room left out; false where it is broadband.
 func (f *Field) UnitResonance(unit int) (hz float64, exists bool) {
-	return f.units[unit].resonance(f.alone(unit), f.room.Air.Density)
+	return f.raw.units[unit].resonance(f.rawSum(unit, unit)[0], f.room.Air.Density)
 }

@@ -107,7 +107,7 @@ func (t *transfer) nearby(d *distant, except int) {
 	}
 	d.powers(t.omega, t.powers[:])
 	t.eachSum(n, func(at int, sum complex128) {
-		t.gamma[at] = t.base + d.at(at, t.powers[:]) + sum
+		t.gamma[at] = t.base*complex(t.f.uniform[at], 0) + d.at(at, t.powers[:]) + sum
 	})
 }
 
@@ -153,7 +153,7 @@ func (t *transfer) realFactors(k float64) {
 // sum adds up the responses of all pairs.
 func (t *transfer) sum() {
 	t.eachSum(t.n, func(at int, sum complex128) {
-		t.gamma[at] = t.base + t.f.sums[at].at(t.kappa2) + sum
+		t.gamma[at] = t.base*complex(t.f.uniform[at], 0) + t.f.sums[at].at(t.kappa2) + sum
 	})
 }
 

@@ -76,9 +76,15 @@ func EquivalentOf(a Absorber, air acoustics.Air, size [2]float64) (Equivalent, b
 	if !ok {
 		return Equivalent{}, false
 	}
-	const h = 1e-4 // relative; the difference is right to h²
 	w0 := 2 * math.Pi * f0
-	slope := imag(a.Specific(complex(w0*(1+h), 0), air)-a.Specific(complex(w0*(1-h), 0), air)) / (2 * h * w0)
+	at := func(h float64) float64 { return imag(a.Specific(complex(w0*(1+h), 0), air)) }
+	// The step is relative. Beside a mode of the cavity it is taken so small that
+	// the reactance is straight over it, to 2 %, and the slope right to the square of that.
+	h := 1e-4
+	for h > 1e-10 && !(math.Abs(at(h)+at(-h)) < 0.02*(at(h)-at(-h))) {
+		h /= 4
+	}
+	slope := (at(h) - at(-h)) / (2 * h * w0)
 	r := real(a.Specific(complex(w0, 0), air))
 	// From the specific impedance to that of the face, or of the mouth.
 	scale := air.Density * air.SpeedOfSound

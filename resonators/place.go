@@ -29,6 +29,8 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 	}
 	a = fitted(a, at.Size)
 	natural, _ := resonance(a, air)
+	_, isNeck := a.(Neck)
+	_, isPanel := a.(Panel)
 	var units []acoustics.Unit
 	for i := range at.Units {
 		centre := [2]float64{at.Centre[0] + float64(i)*at.Size[0], at.Centre[1]}
@@ -41,6 +43,7 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 				},
 				Natural: natural,
 				Owner:   owner,
+				Tile:    !isNeck && !isPanel,
 			})
 		}
 	}
