@@ -190,6 +190,9 @@ func (f *Field) recast(patterns []pattern) {
 		}
 		units, weights, unity, kept = append(units, u), append(weights, w), append(unity, ones), append(kept, p)
 	}
+	for u := range units {
+		f.alike = append(f.alike, u > 0 && kept[u].first == kept[u-1].first)
+	}
 	f.units = units
 	f.weights = append(weights, raw.weights[r:]...)
 	for range others {

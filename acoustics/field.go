@@ -59,6 +59,7 @@ type Field struct {
 	uniform []float64 // [pair]: product of both
 	raw     rawPorts  // before the tiles of wide absorbers were condensed
 	loose   []looseUnit
+	alike   []bool // [unit]: has the impedance of the one before it; nil: none has
 	statics *statics
 	long    [][]float64 // [port]: weights in the static sums' long half
 }

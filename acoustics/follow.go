@@ -39,6 +39,7 @@ func (w *follower) matrix(omega complex128, s float64, except int) {
 	w.t.at(omega, except)
 	r := len(f.units)
 	jwr := 1i * omega * complex(f.room.Air.Density, 0)
+	var z complex128
 	for p := range r {
 		for q := range p {
 			v := jwr * complex(s, 0) * w.t.unitPair(p, q)
@@ -46,7 +47,8 @@ func (w *follower) matrix(omega complex128, s float64, except int) {
 		}
 		own := complex(f.alone(p), 0)
 		part := complex(1+detuning*(1-s)*float64(p)/float64(r), 0)
-		w.lu.a[p*r+p] = f.units[p].Impedance(omega) + jwr*(part*own+complex(s, 0)*(w.t.unitPair(p, p)-own))
+		z = f.impedance(p, omega, z)
+		w.lu.a[p*r+p] = z + jwr*(part*own+complex(s, 0)*(w.t.unitPair(p, p)-own))
 	}
 }
 

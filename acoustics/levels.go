@@ -107,11 +107,21 @@ func (s *scene) at(omega complex128) {
 // couple fills in the matrix Z + jωρ·G.
 func (f *Field) couple(lu *luMatrix, t *transfer, jwr complex128) {
 	r := lu.n
+	var z complex128
 	for p := range r {
 		for q := range p + 1 {
 			v := jwr * t.unitPair(p, q)
 			lu.a[p*r+q], lu.a[q*r+p] = v, v
 		}
-		lu.a[p*r+p] += f.units[p].Impedance(t.omega)
+		z = f.impedance(p, t.omega, z)
+		lu.a[p*r+p] += z
 	}
+}
+
+// impedance returns a unit's impedance; before is that of the unit before it.
+func (f *Field) impedance(u int, omega, before complex128) complex128 {
+	if f.alike != nil && f.alike[u] {
+		return before
+	}
+	return f.units[u].Impedance(omega)
 }

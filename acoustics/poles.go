@@ -96,6 +96,33 @@ func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, tot
 	return f.listed(ctx, paths, upTo, edge, counted, distants)
 }
 
+// PolesNear follows only the modes between two frequencies in Hz, and the units that
+// resonate about there, without counting what they come to: for a search that tries
+// many absorbers and has the room counted at its end. A pole that it does not find is
+// nil or missing. Modes[i] belongs to the i-th of those modes.
+func (f *Field) PolesNear(ctx context.Context, low, high float64) (Poles, error) {
+	distants, err := f.newDistants(ctx, 1.3*high)
+	if err != nil {
+		return Poles{}, err
+	}
+	var paths []path
+	for i, m := range f.modes.damped {
+		if m.Hz >= low && m.Hz <= high {
+			paths = append(paths, path{mode: i, unit: -1})
+		}
+	}
+	for u, unit := range f.units {
+		if unit.Natural >= low/unitsAbove && unit.Natural <= unitsAbove*high {
+			paths = append(paths, path{mode: -1, unit: u})
+		}
+	}
+	if err := f.followAll(ctx, paths, distants, nil); err != nil {
+		return Poles{}, err
+	}
+	dropTwins(paths)
+	return f.listed(ctx, paths, high, rectangle{}, 0, distants)
+}
+
 // starts lists the modes and units that are followed.
 func (f *Field) starts(upTo float64) []path {
 	var paths []path

@@ -85,3 +85,19 @@ func patches(a Absorber, whole acoustics.Patch) []acoustics.Patch {
 
 // tiles returns how many tiles a side (m) is cut into.
 func tiles(side float64) int { return max(1, int(math.Ceil(side/tileSide))) }
+
+// AsWhole returns all units of an absorber as the room would know them as one piston:
+// for reckoning where it resonates in its place.
+func AsWhole(a Absorber, air acoustics.Air, at Placement) acoustics.Unit {
+	switch a.(type) {
+	case Neck, Panel:
+		return UnitAlone(a, air, at)
+	}
+	row := [2]float64{at.Size[0] * float64(at.Units), at.Size[1]}
+	area := row[0] * row[1]
+	return acoustics.Unit{
+		Patch: acoustics.Patch{Surface: at.Surface,
+			Centre: [2]float64{at.Centre[0] + float64(at.Units-1)/2*at.Size[0], at.Centre[1]}, Size: row},
+		Impedance: func(omega complex128) complex128 { return a.InRoom(omega, area, air) },
+	}
+}

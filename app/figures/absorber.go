@@ -169,6 +169,9 @@ func (p *cut) masonry() {
 func (p *cut) layers() {
 	x0, x1 := p.ends()
 	for i, l := range p.b.layers {
+		if l.of == boardLayer {
+			p.fill(x0, p.wall-p.edges[i+1], x1, p.wall-p.edges[i], p.s.Ochre)
+		}
 		if l.of != woolLayer {
 			continue
 		}

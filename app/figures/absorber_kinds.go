@@ -40,6 +40,7 @@ type stuff int
 const (
 	airLayer stuff = iota
 	woolLayer
+	boardLayer // solid all over
 	sheetLayer
 )
 
@@ -146,17 +147,16 @@ func (b *build) cavity(thick float64, f *project.Fill, sys units.System) {
 	b.left = append(b.left, dim{0, thick, "Cavity", small(thick, sys)})
 }
 
-// neckBuild is a box before the wall. Like [study.Depth] it takes the box's
-// whole front as the cavity's section, and before it a front board of that
-// function's thickness; sides and back count no thickness, and are drawn as
-// lines. The mouths are taken to be spread evenly over the front.
+// neckBuild is a box on the wall, its boards of the thickness that [study.Depth] takes
+// them to have; the sides are drawn as lines. The mouths are taken to be spread evenly
+// over the front.
 func neckBuild(a project.Absorber, n project.Neck, sys units.System) build {
-	const litre = 1e6 // mm³
+	const board = study.BoxBoard * 1000
 	var (
 		b     build
-		inner = n.CavityL * litre / (a.Size[0] * a.Size[1] * 1e6)
-		board = study.Depth(a)*1000 - inner
+		inner = study.BoxInside(a) * 1000
 	)
+	b.add(boardLayer, board, "", sys)
 	if n.Fill != nil {
 		b.add(woolLayer, inner*n.Fill.Share, "Fill", sys)
 		b.add(airLayer, inner*(1-n.Fill.Share), "", sys)
@@ -164,7 +164,7 @@ func neckBuild(a project.Absorber, n project.Neck, sys units.System) build {
 		b.add(airLayer, inner, "", sys)
 	}
 	b.add(sheetLayer, board, "Board", sys)
-	b.left = []dim{{0, inner, "Cavity", small(inner, sys)}, {b.depth() - n.LengthMM, b.depth(), neckName, small(n.LengthMM, sys)}}
+	b.left = []dim{{board, board + inner, "Cavity", small(inner, sys)}, {b.depth() - n.LengthMM, b.depth(), neckName, small(n.LengthMM, sys)}}
 	width := a.Size[0] * 1000
 	row := math.Round(math.Sqrt(float64(n.Mouths) * a.Size[0] / a.Size[1]))
 	row = min(row, float64(n.Mouths), math.Floor(width/(1.1*n.MouthDiameterMM)))
@@ -179,7 +179,7 @@ func neckBuild(a project.Absorber, n project.Neck, sys units.System) build {
 	}
 	b.openings = &openings{across: n.MouthDiameterMM, pitch: width / float64(count), count: count, middle: true,
 		size: dim{name: name, value: value}}
-	b.assumed = []string{"Front board taken as " + small(board, sys)}
+	b.assumed = []string{"Boards taken as " + small(board, sys)}
 	b.least = 1.8 * n.MouthDiameterMM
 	b.box, b.neck = true, n.LengthMM
 	b.gauze = n.GauzePaSM > 0

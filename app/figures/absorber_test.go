@@ -145,7 +145,7 @@ func TestAbsorberIsToScale(t *testing.T) {
 // Every dimension stands beside the section, in the units asked for.
 func TestAbsorberDimensions(t *testing.T) {
 	for kind, want := range map[string][2]string{
-		"neck":            {"120 mm|18 mm|240 mm|258 mm|72 mm|Ø 100 mm", "10 3/16″|11/16″|2 13/16″|4 3/4″|9 7/16″|Ø 3 15/16″"},
+		"neck":            {"120 mm|18 mm|278.7 mm|314.7 mm|83.6 mm|Ø 100 mm", "11/16″|11″|12 3/8″|3 5/16″|4 3/4″|Ø 3 15/16″"},
 		"panel":           {"100 mm|106 mm|50 mm|6 mm", "1 15/16″|1/4″|3 15/16″|4 3/16″"},
 		"perforated":      {"100 mm|106 mm|25 mm|40 mm|6 mm|Ø 6 mm", "1 9/16″|1/4″|1″|3 15/16″|4 3/16″|Ø 1/4″"},
 		"slotted":         {"100 mm|120 mm|20 mm|40 mm|5 mm|60 mm", "1 9/16″|13/16″|2 3/8″|3 15/16″|3/16″|4 3/4″"},

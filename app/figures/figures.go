@@ -36,7 +36,7 @@ type View struct {
 	Surface      int // selected acoustics.Surface, −1 for none
 	US           bool
 	Kept         []study.AbsorberRow // absorbers' curves to compare with
-	Ruler        bool // draw the frequency scale under this lane
+	Ruler        bool                // draw the frequency scale under this lane
 	// PlanAt and SectionAt hold the drawings where they are while something is
 	// dragged; nil fits them to the canvas.
 	PlanAt, SectionAt *Placement

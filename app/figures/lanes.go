@@ -175,19 +175,31 @@ func (p lanePen) level() {
 	if many {
 		dots := []vg.Length{1.2 * px, 2.2 * px}
 		p.curve(p.levelPoints(a, l.Mean), 1.2*px, p.s.Ink, dots...)
-		entries = append(entries, entry{"mean of the seats, range shaded", p.s.Ink, dots})
+		name := "mean of the seats, range shaded"
+		if p.r.Robustness != nil {
+			name = "mean of the seats"
+		}
+		entries = append(entries, entry{name, p.s.Ink, dots})
+	}
+	if p.r.Robustness != nil {
+		entries = append(entries, entry{"tolerances", mix(p.s.Paper, p.s.Ochre, 0.3), nil})
 	}
 	p.legend(entries)
 }
 
-// spread lays the range of the treated levels over all seats under the curves.
+// spread lays a range of the treated levels under the curves: that of building
+// tolerances where it is there, else that over all seats.
 func (p lanePen) spread(a scale) {
 	l := p.r.Levels
-	if len(l.Treated) < 2 {
+	lowest, highest := l.Lowest, l.Highest
+	switch g := p.r.Robustness; {
+	case g != nil:
+		lowest, highest = g.Lowest[p.v.Seat], g.Highest[p.v.Seat]
+	case len(l.Treated) < 2:
 		return
 	}
-	outline := p.levelPoints(a, l.Lowest)
-	for _, q := range slices.Backward(p.levelPoints(a, l.Highest)) {
+	outline := p.levelPoints(a, lowest)
+	for _, q := range slices.Backward(p.levelPoints(a, highest)) {
 		outline = append(outline, q)
 	}
 	if len(outline) > 2 {
@@ -342,7 +354,7 @@ func (p lanePen) decay() {
 		}
 	}
 	p.curve(limit, 1.2*px, p.s.Ink, 5*px, 3*px)
-	for _, m := range p.r.Modes {
+	for i, m := range p.r.Modes {
 		if !p.sees(m.Mode.Hz) {
 			continue
 		}
@@ -352,6 +364,7 @@ func (p lanePen) decay() {
 			r = 3.6 * px
 		}
 		p.ring(x, y, r, 1.2*px, p.s.Slate)
+		p.offBar(i, a)
 		for _, t := range m.Poles() {
 			if hz := t.Oscillator.Natural; p.sees(hz) {
 				p.diamond(p.x(hz), a.y(math.Max(0.05, t.Oscillator.T60())), 3*px)
@@ -359,6 +372,16 @@ func (p lanePen) decay() {
 		}
 	}
 	p.legendDecay()
+}
+
+// offBar draws the range of a mode's longest decay under building tolerances.
+func (p lanePen) offBar(mode int, a scale) {
+	g := p.r.Robustness
+	if g == nil || mode >= len(g.T60) || g.T60[mode][1] == 0 {
+		return
+	}
+	x := p.x(p.r.Modes[mode].Mode.Hz)
+	p.line(x, a.y(math.Max(0.05, g.T60[mode][0])), x, a.y(math.Max(0.05, g.T60[mode][1])), 3.5*px, mix(p.s.Paper, p.s.Ochre, 0.35))
 }
 
 // diamond is the sign of a treated pole.

@@ -134,6 +134,9 @@ func LaneReading(lane Lane, r *study.Result, v View, hz float64) string {
 			if len(r.Absorbers) > 0 {
 				s += "  treated " + units.Decibels(r.Levels.Treated[v.Seat][i])
 			}
+			if g := r.Robustness; g != nil {
+				s += fmt.Sprintf(" (%.1f to %.1f)", g.Lowest[v.Seat][i], g.Highest[v.Seat][i])
+			}
 			if len(r.Levels.Treated) > 1 {
 				s += fmt.Sprintf("  all seats mean %s, %s to %s", units.Decibels(r.Levels.Mean[i]), strings.TrimSuffix(units.Decibels(r.Levels.Lowest[i]), " dB"), units.Decibels(r.Levels.Highest[i]))
 			}
@@ -145,6 +148,9 @@ func LaneReading(lane Lane, r *study.Result, v View, hz float64) string {
 			s := fmt.Sprintf("%s  bare %s", m.Mode, units.Seconds(m.Oscillator.T60()))
 			if t := m.LongestTreated(); t > 0 {
 				s += "  treated " + units.Seconds(t)
+			}
+			if g := r.Robustness; g != nil && i < len(g.T60) && g.T60[i][1] > 0 {
+				s += fmt.Sprintf(" (%.2f to %.2f s by tolerances)", g.T60[i][0], g.T60[i][1])
 			}
 			return s + "  limit " + units.Seconds(m.LimitS)
 		}

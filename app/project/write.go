@@ -64,6 +64,13 @@ func (a Absorber) node() *node {
 	return n
 }
 
+// MarshalJSON returns the absorber as it stands in a file.
+func (a Absorber) MarshalJSON() ([]byte, error) {
+	var b bytes.Buffer
+	a.node().print(&b, "")
+	return b.Bytes(), nil
+}
+
 func (l Limits) node() *node {
 	n := &node{kind: objectNode}
 	if l.Curve != "" {

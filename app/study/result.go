@@ -19,6 +19,9 @@ type Options struct {
 	// FieldDeg is the greatest angle of incidence of the diffuse field for the
 	// absorbers' coefficients, degrees; default 90, building practice has 78.
 	FieldDeg float64
+	// Samples is how many rooms with tolerances Result.Robustness is worked out from; 0
+	// for none.
+	Samples int
 	// MapHz is the frequency at which Result.Plan and Result.Section are wanted, 0
 	// for none; they lie through the seat of index MapSeat, with about MapCells cells
 	// along the longer side, default 28.
@@ -64,6 +67,9 @@ type Result struct {
 	// Reverberation is the diffuse-field estimate by octaves, 125 to 4000 Hz.
 	Reverberation []ReverberationRow
 
+	// Robustness is the range under building tolerances; nil where it is not asked for or
+	// nothing treats the room.
+	Robustness *Robustness
 	// Plan and Section are the level over the room at Options.MapHz; nil where they
 	// are not asked for.
 	Plan, Section *LevelMap

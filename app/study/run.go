@@ -78,7 +78,7 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 	}
 	r.Stage = StageLevel
 	r.find()
-	r.stages = stages{shell: shell, kit: kit, field: field, poles: past.poles, rings: past.rings}
+	r.stages = stages{shell: shell, kit: kit, field: field, poles: past.poles, rings: past.rings, robust: past.robust}
 	progress(r.copied())
 
 	poles, err := polesStage(ctx, o, field, past.poles)
@@ -95,6 +95,25 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 	r.Stage = StageTreated
 	r.judge(shell.criteria)
 	r.find()
+	return r.tolerated(ctx, past.robust, progress)
+}
+
+// tolerated adds what tolerances make of a complete result, where it is asked for.
+func (r *Result) tolerated(ctx context.Context, past *robustPart, progress func(*Result)) (*Result, error) {
+	if r.Options.Samples == 0 || len(r.Project.Absorbers) == 0 {
+		r.stages.robust = past
+		return r, nil
+	}
+	if past == nil || past.poles != r.stages.poles || past.samples != r.Options.Samples {
+		progress(r.copied())
+		g, err := r.robust(ctx, r.Options.Samples)
+		if err != nil {
+			return nil, err
+		}
+		past = &robustPart{r.stages.poles, r.Options.Samples, g}
+	}
+	r = r.copied()
+	r.stages.robust, r.Robustness = past, past.robustness
 	return r, nil
 }
 

@@ -15,11 +15,12 @@ import (
 // that a later run can take over those whose inputs are the same. Moving a seat
 // never recomputes modes. Parts are never changed once made.
 type stages struct {
-	shell *shellPart
-	kit   *kitPart
-	field *fieldPart
-	poles *polesPart
-	rings *ringingPart
+	shell  *shellPart
+	kit    *kitPart
+	field  *fieldPart
+	poles  *polesPart
+	rings  *ringingPart
+	robust *robustPart
 }
 
 // shellPart is what shape, air, linings and limits decide.
@@ -244,4 +245,11 @@ func seats(p project.Project) []acoustics.Point {
 		s[i] = seat.At
 	}
 	return s
+}
+
+// robustPart is what tolerances make of the room whose poles it was made with.
+type robustPart struct {
+	poles      *polesPart
+	samples    int
+	robustness *Robustness
 }

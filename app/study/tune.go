@@ -1,10 +1,13 @@
 package study
 
 import (
+	"cmp"
 	"context"
 	"fmt"
 	"math"
+	"runtime"
 	"slices"
+	"sync"
 
 	"stillroom/acoustics"
 	"stillroom/app/project"
@@ -14,37 +17,59 @@ import (
 
 // TuneRequest asks for absorbers tuned to one mode.
 type TuneRequest struct {
-	Mode     int                 // index in Result.Modes
-	Kinds    []string            // "neck", "panel"; none: both
-	Surfaces []acoustics.Surface // that may be built on; none: all six
-	DepthM   float64             // how far it may stand out; 0: 0.3 m
-	TargetS  float64             // T60 asked for, s; 0: the mode's limit
+	Mode      int                 // index in Result.Modes
+	Kinds     []string            // of tuning.Kinds; none: all
+	Surfaces  []acoustics.Surface // that may be built on; none: all six
+	DepthM    float64             // how far it may stand out; 0: 0.3 m
+	TargetS   float64             // T60 asked for, s; 0: the mode's limit
+	Goal      tuning.Goal
+	MostUnits int    // budget of units; 0: 6
+	System    string // whose stock: "metric" or "us"; "": metric
 }
 
 // Proposal is an absorber that can be built, in its place, and what it is
 // calculated to do.
 type Proposal struct {
 	Absorber    project.Absorber // with an id fresh in the project
-	Candidate   tuning.Candidate
-	F0Hz, Q     float64 // at its spot in the room
-	MinVolumeM3 float64 // at least this much box volume for the target; 0 for panels
-	MinAreaM2   float64 // at least this much panel for the target; 0 for boxes
+	Candidate   tuning.Candidate // the start that the closed forms gave
+	F0Hz, Q     float64          // at its spot in the room; 0 where broadband
+	MinVolumeM3 float64          // at least this much box volume for the target; 0 for others
+	MinAreaM2   float64          // at least this much panel for the target; 0 for boxes
 	Before      acoustics.Oscillator
 	// After are the poles that mode and absorber have in the treated room as a
-	// whole, longest decay first.
+	// whole, longest decay first, those that no seat hears left out.
 	After []PoleRow
-	Meets bool   // all of After within the target
-	Spot  string // where it goes, in words
+	// PeakBefore and PeakAfter are the highest treated levels within a sixth of an
+	// octave of the mode at any seat, without and with the proposal, dB.
+	PeakBefore, PeakAfter float64
+	Neighbours            []Neighbour // modes within a third of an octave
+	VolumeM3, SheetM2     float64     // of all units
+	Tolerances            []tuning.Tolerance
+	// ColderS and WarmerS are the longest T60 of After with the air 5 °C colder and
+	// warmer, s; 0 where not worked out.
+	ColderS, WarmerS float64
+	Meets            bool   // all of After within the target
+	Spot             string // where it goes, in words
+}
+
+// Neighbour is what a proposal does to another mode.
+type Neighbour struct {
+	Mode          int     // index in Result.Modes
+	Before, After float64 // longest T60, s; After 0 where it is no longer listed
 }
 
 // defaultDepth is how far an absorber may stand out where nothing is said, m.
 const defaultDepth = 0.3
 
-// Tune proposes absorbers for one mode of a result, best first: those that the
-// treated room as a whole brings under the target, by the least depth of what
-// they take; then the rest by their longest decay. progress, where not nil, is
-// told how many proposals of how many have been tried in the room.
-func Tune(ctx context.Context, r *Result, q TuneRequest, progress func(done, total int)) ([]Proposal, error) {
+// TuneProgress is told how far a search is, and the ranking so far.
+type TuneProgress func(done, total int, soFar []Proposal)
+
+// Tune proposes absorbers for one mode of a result, best first. The closed forms
+// give starts; each is refined in the treated room over what can be built, and what
+// the room as a whole does decides: first those that meet the target, then by the
+// goal. It is deterministic. progress may be nil; it is called from several
+// goroutines, one at a time.
+func Tune(ctx context.Context, r *Result, q TuneRequest, progress TuneProgress) ([]Proposal, error) {
 	if q.Mode < 0 || q.Mode >= len(r.Modes) {
 		return nil, fmt.Errorf("tune: there is no mode number %d", q.Mode)
 	}
@@ -52,37 +77,84 @@ func Tune(ctx context.Context, r *Result, q TuneRequest, progress func(done, tot
 	if err != nil {
 		return nil, err
 	}
-	var out []Proposal
-	for i, c := range candidates {
-		if progress != nil {
-			progress(i, len(candidates))
-		}
-		p, err := r.try(ctx, q, c)
-		if err != nil {
+	var (
+		found = make([]*Proposal, len(candidates))
+		mutex sync.Mutex
+		group sync.WaitGroup
+		done  int
+		first error
+		next  = make(chan int)
+	)
+	for range runtime.GOMAXPROCS(0) {
+		group.Go(func() {
+			for i := range next {
+				p, err := r.try(ctx, q, candidates[i])
+				mutex.Lock()
+				if err != nil {
+					first = cmp.Or(first, err)
+				} else {
+					found[i] = &p
+				}
+				done++
+				if progress != nil && ctx.Err() == nil {
+					progress(done, len(candidates), ranked(found, q.Goal))
+				}
+				mutex.Unlock()
+			}
+		})
+	}
+	for i := range candidates {
+		next <- i
+	}
+	close(next)
+	group.Wait()
+	if first != nil {
+		return nil, first
+	}
+	out := ranked(found, q.Goal)
+	for i := range min(len(out), weathered) {
+		if err := r.weather(ctx, q, &out[i]); err != nil {
 			return nil, err
 		}
-		out = append(out, p)
 	}
-	slices.SortStableFunc(out, better)
-	return out, nil
+	return out, ctx.Err()
 }
 
-// better puts what meets the target first, then the shorter decay.
-func better(a, b Proposal) int {
+// ranked returns the proposals there are, best first, each absorber once.
+func ranked(found []*Proposal, goal tuning.Goal) []Proposal {
+	var out []Proposal
+	for _, p := range found {
+		if p != nil && !slices.ContainsFunc(out, p.same) {
+			out = append(out, *p)
+		}
+	}
+	slices.SortStableFunc(out, func(a, b Proposal) int { return better(a, b, goal) })
+	return out
+}
+
+// same reports whether another proposal is the same absorber in the same place.
+func (p *Proposal) same(o Proposal) bool {
+	return p.Absorber.Kind == o.Absorber.Kind && p.Absorber.Surface == o.Absorber.Surface && p.Absorber.Centre == o.Absorber.Centre &&
+		p.Absorber.Size == o.Absorber.Size && p.Absorber.Units == o.Absorber.Units && p.F0Hz == o.F0Hz && p.VolumeM3 == o.VolumeM3
+}
+
+// better puts what meets the target first, then what serves the goal best.
+func better(a, b Proposal, goal tuning.Goal) int {
 	switch {
 	case a.Meets && !b.Meets:
 		return -1
 	case b.Meets && !a.Meets:
 		return 1
-	case a.longest() < b.longest():
-		return -1
-	case a.longest() > b.longest():
-		return 1
+	case goal == tuning.LowPeak:
+		return cmp.Compare(a.PeakAfter, b.PeakAfter)
+	case goal == tuning.LeastVolume && a.Meets:
+		return cmp.Compare(a.VolumeM3, b.VolumeM3)
 	}
-	return 0
+	return cmp.Compare(a.Longest(), b.Longest())
 }
 
-func (p Proposal) longest() float64 {
+// Longest returns the longest T60 of the poles after treatment, s.
+func (p Proposal) Longest() float64 {
 	if len(p.After) == 0 {
 		return 0
 	}
@@ -99,16 +171,14 @@ func (r *Result) target(q TuneRequest) float64 {
 
 // problem puts the request in the tuner's terms.
 func (r *Result) problem(q TuneRequest) tuning.Problem {
-	depth := q.DepthM
-	if depth == 0 {
-		depth = defaultDepth
-	}
+	stock := TunerStock(r.Project, cmp.Or(q.System, "metric"))
 	loads := acoustics.NewAirLoads(r.Room.Box)
 	p := tuning.Problem{
 		Mode: r.Modes[q.Mode].Mode, Box: r.Room.Box, Air: r.Air,
-		Kinds: q.Kinds, Surfaces: q.Surfaces, Depth: depth, TargetT60: r.target(q),
+		Kinds: q.Kinds, Surfaces: q.Surfaces, Depth: cmp.Or(q.DepthM, defaultDepth), TargetT60: r.target(q),
+		Goal: q.Goal, MostUnits: q.MostUnits, Stock: &stock,
 		Reactance: func(a resonators.Absorber, at resonators.Placement, hz float64) float64 {
-			u := resonators.UnitAlone(a, r.Air, at)
+			u := resonators.AsWhole(a, r.Air, at)
 			return u.Reactance(hz, loads.Of(u.Patch), r.Air.Density)
 		},
 	}
@@ -121,124 +191,159 @@ func (r *Result) problem(q TuneRequest) tuning.Problem {
 			Depth:   Depth(a),
 		})
 	}
+	for _, k := range r.Project.KeepOut {
+		p.Occupied = append(p.Occupied, tuning.Occupied{Surface: k.Surface, Centre: k.Centre, Size: k.Size})
+	}
 	return p
 }
 
-// try builds the candidate into the project and asks the treated room.
+// around are the frequencies about a mode between which its neighbours and the poles
+// that come of it are looked at, as a ratio: a third of an octave, and a little.
+const around = 1.28
+
+// try refines a candidate in the room, builds it into the project and asks the
+// treated room as a whole.
 func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Proposal, error) {
 	m := r.Modes[q.Mode]
-	p := Proposal{
-		Absorber: buildable(c), Candidate: c, F0Hz: c.Oscillator.Natural, Q: c.Oscillator.Q(),
-		MinVolumeM3: c.LeastVolume, MinAreaM2: c.LeastArea, Before: m.Oscillator,
-		Spot: spot(r.Room.Box, c.At),
+	a := buildable(c)
+	a.ID = r.Project.FreshAbsorberID()
+	a, err := r.refined(ctx, q, a, c)
+	if err != nil {
+		return Proposal{}, err
 	}
-	p.Absorber.ID = r.Project.FreshAbsorberID()
-	with := r.Project
-	with.Absorbers = append(slices.Clone(with.Absorbers), p.Absorber)
-	o := r.Options
-	o.Points, o.ModesToHz = 2, min(o.ModesToHz, 1.3*m.Mode.Hz)
-	treated, err := Run(ctx, with, o, nil, nil)
+	p := Proposal{Absorber: a, Candidate: c, MinVolumeM3: c.LeastVolume, MinAreaM2: c.LeastArea, Before: m.Oscillator,
+		Spot: spot(r.Room.Box, c.At), VolumeM3: Volume(a), SheetM2: SheetArea(a)}
+	treated, err := r.with(ctx, q, a, 0)
 	if err != nil {
 		return p, err
 	}
-	at := treated.Modes[q.Mode]
-	p.After = at.Treated
-	for _, pole := range treated.AbsorberPoles {
-		if pole.Absorber == len(with.Absorbers)-1 {
-			p.After = append(slices.Clone(p.After), pole)
-		}
+	row := treated.Absorbers[len(treated.Absorbers)-1]
+	if o := row.Report.Oscillator; o != nil {
+		p.F0Hz, p.Q = row.InRoomHz, o.Q()
 	}
-	slices.SortStableFunc(p.After, func(a, b PoleRow) int {
-		switch {
-		case a.Oscillator.Decay < b.Oscillator.Decay:
-			return -1
-		case a.Oscillator.Decay > b.Oscillator.Decay:
-			return 1
+	p.After = treated.after(q.Mode)
+	p.Meets = len(p.After) > 0 && p.Longest() <= r.target(q) || len(p.After) == 0
+	p.PeakBefore, p.PeakAfter = r.peakNear(m.Mode.Hz), treated.peakNear(m.Mode.Hz)
+	for i, n := range r.Modes {
+		if i == q.Mode || i >= len(treated.Modes) || math.Abs(math.Log(n.Mode.Hz/m.Mode.Hz)) > math.Log(around) {
+			continue
 		}
-		return 0
-	})
-	p.Meets = p.longest() <= r.target(q)
+		p.Neighbours = append(p.Neighbours, Neighbour{Mode: i, Before: n.Now(), After: treated.Modes[i].Now()})
+	}
+	p.Tolerances = tolerances(row, p.After)
 	return p, nil
 }
 
-// buildable turns a candidate into the file's terms, its dimensions rounded to
-// what can be built: litres to a hundredth, millimetres to a tenth.
-func buildable(c tuning.Candidate) project.Absorber {
-	a := project.Absorber{Surface: c.At.Surface, Centre: c.At.Centre, Size: c.At.Size, Units: c.At.Units}
-	for i := range 2 {
-		a.Centre[i], a.Size[i] = round(a.Centre[i], 1e4), round(a.Size[i], 1e4)
+// Now returns the longest T60 of a mode as it stands, s.
+func (m ModeRow) Now() float64 {
+	if t := m.LongestTreated(); t > 0 {
+		return t
 	}
-	switch d := c.Absorber.(type) {
-	case resonators.Neck:
-		a.Kind = "neck"
-		a.Neck = &project.Neck{CavityL: round(d.Cavity/l, 100), MouthDiameterMM: round(2*d.MouthRadius/mm, 10),
-			LengthMM: round(d.Length/mm, 10), Mouths: d.Mouths, GauzePaSM: round(d.Gauze, 10)}
-		if d.FillShare > 0 {
-			a.Neck.Fill = &project.NeckFill{Share: round(d.FillShare, 1000), FlowPaSM2: d.FillFlow}
-		}
-	case resonators.Panel:
-		a.Kind = "panel"
-		a.Panel = &project.Panel{MassKgM2: round(d.Mass, 1000), ThicknessMM: round(d.Thickness/mm, 100),
-			YoungsGPa: round(d.Youngs/1e9, 1000), Poisson: d.Poisson, LossFactor: d.LossFactor,
-			CavityMM: round(d.Cavity/mm, 10), EdgePaSM: round(d.Edge, 10)}
-		if d.Fill != nil {
-			a.Panel.Fill = &project.Fill{ThicknessMM: round(d.Fill.Thickness/mm, 10),
-				FlowPaSM2: d.Fill.FlowResistivity, AtFace: d.Fill.AtFace}
-		}
-	default:
-		panic(fmt.Sprintf("study: the tuner proposed a %s", d.Kind()))
-	}
-	return a
+	return m.Oscillator.T60()
 }
 
-// round rounds v to 1/steps.
-func round(v, steps float64) float64 { return math.Round(v*steps) / steps }
+// with studies the project with one more absorber, the air warmer by some °C, as far
+// as the request's mode needs it.
+func (r *Result) with(ctx context.Context, q TuneRequest, a project.Absorber, warmer float64) (*Result, error) {
+	p := r.Project
+	p.Absorbers = append(slices.Clone(p.Absorbers), a)
+	p.Air.TemperatureC = math.Max(-20, math.Min(50, p.Air.TemperatureC+warmer))
+	hz := r.Modes[q.Mode].Mode.Hz
+	o := Options{FromHz: hz / around, ToHz: hz * around, Points: 60, ModesToHz: around * hz * 1.02, FieldDeg: r.Options.FieldDeg}
+	return Run(ctx, p, o, nil, nil)
+}
 
-// spot says where a placement is: its surface, and whether in a corner, at an
-// edge or free on it.
-func spot(b acoustics.Box, at resonators.Placement) string {
-	const near = 0.05 // m
-	i, j := at.Surface.InPlane()
-	d := b.Dimensions()
-	ends := [2]float64{d[i], d[j]}
-	length := [2]float64{at.Size[0] * float64(at.Units), at.Size[1]}
-	meets := 0
-	for k := range 2 {
-		lo := at.Centre[k] - at.Size[k]/2
-		if lo < near || ends[k]-(lo+length[k]) < near {
-			meets++
+// unheard is how far below the loudest pole of the mode and its absorber a pole may
+// lie at every seat and be left out of account, dB.
+const unheard = 20
+
+// after returns the poles that a mode and the last absorber of a project have, the
+// longest first: the mode's own, and those of the absorber that lie near it and that
+// some seat hears.
+func (r *Result) after(mode int) []PoleRow {
+	hz := r.Modes[mode].Mode.Hz
+	var near []PoleRow
+	for _, p := range r.AbsorberPoles {
+		if p.Absorber == len(r.Project.Absorbers)-1 && math.Abs(math.Log(p.Oscillator.Natural/hz)) < math.Log(around) {
+			near = append(near, p)
 		}
 	}
-	return [3]string{"free on the ", "at an edge of the ", "in a corner of the "}[meets] + surfaceWords(at.Surface)
+	return heard(r.Modes[mode].Treated, near)
 }
 
-// surfaceWords names a surface as one speaks of it.
-func surfaceWords(s acoustics.Surface) string {
-	switch s {
-	case acoustics.Floor, acoustics.Ceiling:
-		return s.String()
-	default:
-		return s.String() + " wall"
+// heard joins a mode's own poles and those of its absorber, the longest first, without
+// those of the absorber that no seat hears.
+func heard(own, near []PoleRow) []PoleRow {
+	loudness := func(p PoleRow) float64 {
+		top := math.Inf(-1)
+		for _, l := range p.LevelDB {
+			if l > top { // NaN is not
+				top = l
+			}
+		}
+		return top
 	}
+	loudest := math.Inf(-1)
+	for _, p := range slices.Concat(own, near) {
+		loudest = math.Max(loudest, loudness(p))
+	}
+	list := slices.Clone(own)
+	for _, p := range near {
+		if math.IsInf(loudest, -1) || loudness(p) >= loudest-unheard {
+			list = append(list, p)
+		}
+	}
+	slices.SortStableFunc(list, func(a, b PoleRow) int { return cmp.Compare(a.Oscillator.Decay, b.Oscillator.Decay) })
+	return list
 }
 
-// Depth returns how far an absorber stands out from its surface, in metres: its
-// cavity and sheet; for a neck box its volume over its front and a front board.
-func Depth(a project.Absorber) float64 {
-	const board = 0.018
-	switch {
-	case a.Neck != nil:
-		return a.Neck.CavityL*l/(a.Size[0]*a.Size[1]) + board
-	case a.Panel != nil:
-		return (a.Panel.CavityMM + a.Panel.ThicknessMM) * mm
-	case a.Perforated != nil:
-		return (a.Perforated.CavityMM + a.Perforated.PanelMM) * mm
-	case a.Slotted != nil:
-		return (a.Slotted.CavityMM + a.Slotted.PanelMM) * mm
-	case a.Microperforated != nil:
-		return (a.Microperforated.CavityMM + a.Microperforated.PanelMM) * mm
-	case a.Porous != nil:
-		return (a.Porous.ThicknessMM + a.Porous.GapMM) * mm
+// peakNear returns the highest treated level within a sixth of an octave of a
+// frequency at any seat, dB.
+func (r *Result) peakNear(hz float64) float64 {
+	top := math.Inf(-1)
+	for _, seat := range r.Levels.Treated {
+		for i, f := range r.Levels.Hz {
+			if math.Abs(math.Log2(f/hz)) < 1.0/6 {
+				top = math.Max(top, seat[i])
+			}
+		}
 	}
-	return 0
+	return top
+}
+
+// weathered is how many of the best proposals are tried in colder and warmer air, by
+// weatherC each way.
+const (
+	weathered = 5
+	weatherC  = 5.0
+)
+
+// weather works out what colder and warmer air do to a proposal.
+func (r *Result) weather(ctx context.Context, q TuneRequest, p *Proposal) error {
+	for _, x := range []struct {
+		by float64
+		to *float64
+	}{{-weatherC, &p.ColderS}, {weatherC, &p.WarmerS}} {
+		t, err := r.with(ctx, q, p.Absorber, x.by)
+		if err != nil {
+			return err
+		}
+		if after := t.after(q.Mode); len(after) > 0 {
+			*x.to = after[0].Oscillator.T60()
+		}
+	}
+	return nil
+}
+
+// tolerances returns each dimension's pull and how far it may be off while f0 moves
+// by no more than half of the half-power width of the treated pair's slowest pole.
+func tolerances(row AbsorberRow, after []PoleRow) []tuning.Tolerance {
+	if len(after) == 0 {
+		return nil
+	}
+	var list []tuning.Tolerance
+	for _, s := range row.Sensitivities {
+		list = append(list, tuning.Tolerance{Sensitivity: s, Allowed: s.Tolerance(after[0].Oscillator.HalfPowerWidth() / 2)})
+	}
+	return list
 }

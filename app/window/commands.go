@@ -5,6 +5,7 @@ import (
 	"fyne.io/fyne/v2/driver/desktop"
 	"fyne.io/fyne/v2/widget"
 
+	"stillroom/app/study"
 	"stillroom/samples"
 )
 
@@ -37,11 +38,13 @@ func (c *controller) commands() []command {
 		{menu: "Edit", label: "Remove what is selected", enabled: c.removable, run: c.remove},
 		{menu: "Mode", label: "Tune an absorber to this mode…", key: fyne.KeyT, enabled: func() bool { return c.state.Result != nil && c.state.Selection.Mode >= 0 },
 			run: func() { c.tune(c.state.Selection.Mode) }},
+		{menu: "Mode", label: "Plan for all problem modes…", key: fyne.KeyG, enabled: func() bool { return c.state.Result != nil && c.state.Result.Stage == study.StageTreated }, run: c.planAll},
 		{menu: "Mode", label: "Next problem", key: fyne.KeyP, enabled: func() bool { return c.state.Result != nil }, run: func() { c.finding(1) }},
 		{menu: "View", label: "Details", key: fyne.KeyD, enabled: always, run: c.foldDetails},
 		{menu: "View", label: "Night", key: fyne.KeyL, enabled: always, run: c.switchDark},
 		{menu: "View", label: "Feet and inches", key: fyne.KeyU, enabled: always, run: c.switchUnits},
 		{menu: "View", label: "Level over the drawing", key: fyne.KeyM, enabled: func() bool { return c.state.Result != nil }, run: c.switchMap},
+		{menu: "View", label: "Band of tolerances", key: fyne.KeyB, enabled: always, run: c.switchTolerances},
 		{menu: "View", label: "Diffuse field to 78° or 90°", enabled: always, run: c.switchField},
 		{menu: "View", label: "Whole ruler", key: fyne.Key0, enabled: always, run: func() { c.ruler(rulerFrom, rulerTo) }},
 	}

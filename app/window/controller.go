@@ -294,8 +294,8 @@ func (c *controller) dragging(on bool) {
 	c.state.Dragging = on
 	if !on {
 		c.keep()
-		if c.state.Map {
-			c.study() // in full sharpness
+		if c.state.Map || c.state.Off {
+			c.study() // in full
 		}
 	}
 }
@@ -320,6 +320,13 @@ func (c *controller) keepCurve(absorber int) {
 		c.state.Kept = append(slices.Clone(c.state.Kept), row)
 	}
 	c.lanes.show(c.state)
+}
+
+// switchTolerances shows what building tolerances and temperature make of the treated
+// room, or not.
+func (c *controller) switchTolerances() {
+	c.state.Off = !c.state.Off
+	c.study()
 }
 
 // switchField takes the diffuse field to 78° or to 90°.

@@ -33,6 +33,7 @@ type State struct {
 	ToHz      float64
 	CursorHz  float64             // the common cursor, 0 for none
 	Map       bool                // the drawings show the level at the selected mode's frequency
+	Off       bool                // what building tolerances make of it is shown
 	To78      bool                // the diffuse field ends at 78°
 	Kept      []study.AbsorberRow // curves kept for comparison
 	Folded    []string            // names of the lanes that are folded
@@ -63,6 +64,9 @@ type Actions struct {
 	Ears func(seat int)
 }
 
+// offSamples is how many rooms with tolerances the band is worked out from.
+const offSamples = 24
+
 // dragCells is how fine the map of the level is while something is dragged.
 const dragCells = 14
 
@@ -74,6 +78,9 @@ func (s State) options() study.Options {
 	}
 	if s.To78 {
 		o.FieldDeg = 78
+	}
+	if s.Off && !s.Dragging {
+		o.Samples = offSamples
 	}
 	if s.Dragging {
 		o.MapCells = dragCells

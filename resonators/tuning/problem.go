@@ -1,6 +1,7 @@
 package tuning
 
 import (
+	"cmp"
 	"math"
 
 	"stillroom/acoustics"
@@ -10,10 +11,11 @@ import (
 // Goal is what an absorber is tuned for.
 type Goal int
 
-// The two goals.
+// The goals.
 const (
 	FastestDecay Goal = iota // both poles of the pair decay as fast as can be
 	LowPeak                  // the lowest response to a loudspeaker
+	LeastVolume              // within the target, with the least that is built
 )
 
 // Occupied is a rectangle of a surface that is taken: another absorber, a door,
@@ -44,12 +46,16 @@ type Problem struct {
 	// that the room puts before it, in any unit: only its zero counts. nil: by the
 	// absorber's own reckoning.
 	Reactance func(a resonators.Absorber, at resonators.Placement, hz float64) float64
+	// MostUnits is how many units there may be in all; 0: 6.
+	MostUnits int
 	// Most is how many candidates are wanted; 0: 12.
 	Most int
 }
 
 // Kinds returns the kinds of absorber that are proposed.
-func Kinds() []string { return []string{"neck", "panel"} }
+func Kinds() []string {
+	return []string{"neck", "panel", "perforated", "slotted", "microperforated", "porous"}
+}
 
 // Candidate is one absorber that can be built, at the spot it goes to.
 type Candidate struct {
@@ -119,6 +125,30 @@ func (p Problem) wanted(mu float64) (hz, damping float64) {
 	return o.Natural, FastestDamping(o.DampingRatio(), mu)
 }
 
+// mostUnits returns the budget of units.
+func (p Problem) mostUnits() int { return cmp.Or(p.MostUnits, mostUnits) }
+
+// byWorth puts candidates that meet the target first, then, by the goal, those that
+// take less of the room or whose slower pole decays faster.
+func (p Problem) byWorth(a, b Candidate) int {
+	switch {
+	case a.Meets && !b.Meets:
+		return -1
+	case b.Meets && !a.Meets:
+		return 1
+	case p.Goal == LeastVolume && a.Meets:
+		if c := cmp.Compare(a.Volume(), b.Volume()); c != 0 {
+			return c
+		}
+	}
+	return cmp.Compare(a.Pair[0].T60(), b.Pair[0].T60())
+}
+
+// Volume returns what all units take of the room, m³.
+func (c Candidate) Volume() float64 {
+	return c.At.Size[0] * c.At.Size[1] * float64(c.At.Units) * c.Depth
+}
+
 // reactance returns the imaginary part of the absorber's impedance at a
 // frequency, at its spot.
 func (p Problem) reactance(a resonators.Absorber, at resonators.Placement, hz float64) float64 {
@@ -170,11 +200,11 @@ func (p Problem) settle(c Candidate) (Candidate, bool) {
 	c.Pair = Pair(p.Mode.Oscillator(), c.Oscillator, c.Coupling)
 	c.Meets = c.Pair[0].T60() <= p.target()
 	mean := squared / float64(c.At.Units)
-	switch a := c.Absorber.(type) {
+	switch c.Absorber.(type) {
 	case resonators.Neck:
 		c.LeastVolume = BoxVolume(c.LeastCoupling, mean, norm, volume)
-	case resonators.Panel:
-		c.LeastArea = PanelArea(c.LeastCoupling, mean, norm, volume, a.Mass, e.Oscillator.Natural, p.Air)
+	default:
+		c.LeastArea = PanelArea(c.LeastCoupling, mean, norm, volume, e.Mass, e.Oscillator.Natural, p.Air)
 	}
 	return c, true
 }

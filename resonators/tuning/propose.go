@@ -41,14 +41,18 @@ func Propose(ctx context.Context, p Problem) ([]Candidate, error) {
 	}
 	var out []Candidate
 	for _, s := range surfaces {
-		if slices.Contains(kinds, "neck") {
-			out = append(out, best(p.necks(ctx, s, stock))...)
-		}
-		if slices.Contains(kinds, "panel") {
-			out = append(out, best(p.panels(ctx, s, stock))...)
+		for _, kind := range kinds {
+			switch kind {
+			case "neck":
+				out = append(out, p.best(p.necks(ctx, s, stock))...)
+			case "panel":
+				out = append(out, p.best(p.panels(ctx, s, stock))...)
+			default:
+				out = append(out, p.best(p.wide(ctx, kind, s, stock))...)
+			}
 		}
 	}
-	out = shortList(out, kinds, cmp.Or(p.Most, 12))
+	out = p.shortList(out, kinds, cmp.Or(p.Most, 12))
 	for i := range out {
 		out[i].Tolerances = p.tolerances(out[i])
 	}
@@ -57,40 +61,28 @@ func Propose(ctx context.Context, p Problem) ([]Candidate, error) {
 
 // shortList keeps the best, an equal share of each kind where there are enough,
 // best first.
-func shortList(all []Candidate, kinds []string, most int) []Candidate {
-	slices.SortStableFunc(all, byWorth)
+func (p Problem) shortList(all []Candidate, kinds []string, most int) []Candidate {
+	slices.SortStableFunc(all, p.byWorth)
 	var out, rest []Candidate
 	taken := map[string]int{}
 	for _, c := range all {
 		k := c.Absorber.Kind()
-		if taken[k] < most/len(kinds) {
+		if taken[k] < max(1, most/len(kinds)) {
 			taken[k]++
 			out = append(out, c)
 		} else {
 			rest = append(rest, c)
 		}
 	}
-	out = append(out, rest[:min(len(rest), most-len(out))]...)
-	slices.SortStableFunc(out, byWorth)
+	out = append(out, rest[:max(0, min(len(rest), most-len(out)))]...)
+	slices.SortStableFunc(out, p.byWorth)
 	return out
 }
 
 // best keeps the best few.
-func best(c []Candidate) []Candidate {
-	slices.SortStableFunc(c, byWorth)
+func (p Problem) best(c []Candidate) []Candidate {
+	slices.SortStableFunc(c, p.byWorth)
 	return c[:min(len(c), perPlace)]
-}
-
-// byWorth puts candidates that meet the target first, then those whose slower
-// pole decays faster.
-func byWorth(a, b Candidate) int {
-	switch {
-	case a.Meets && !b.Meets:
-		return -1
-	case b.Meets && !a.Meets:
-		return 1
-	}
-	return cmp.Compare(a.Pair[0].T60(), b.Pair[0].T60())
 }
 
 // panelSizes are fronts of membrane absorbers, as cut from common sheet, m.
@@ -115,7 +107,7 @@ func (p Problem) necks(ctx context.Context, s acoustics.Surface, stock Stock) []
 		return nil
 	}
 	for _, side := range []float64{0.3, 0.4, 0.5, 0.6, 0.8} {
-		for units := 1; units <= mostUnits && ctx.Err() == nil; units++ {
+		for units := 1; units <= p.mostUnits() && ctx.Err() == nil; units++ {
 			size := [2]float64{side, side}
 			at, squared, ok := p.strengthAt(s, size, units, p.Depth)
 			if !ok || squared < 1e-3 {
@@ -182,7 +174,7 @@ func (p Problem) panels(ctx context.Context, s acoustics.Surface, stock Stock) [
 	var out []Candidate
 	for _, size := range panelSizes() {
 		built := make([]bool, len(stock.Panels)) // enough of this sheet
-		for units := 1; units <= mostUnits && ctx.Err() == nil; units++ {
+		for units := 1; units <= p.mostUnits() && ctx.Err() == nil; units++ {
 			at, squared, ok := p.strengthAt(s, size, units, p.Depth)
 			if !ok || squared < 1e-3 {
 				break
@@ -203,18 +195,17 @@ func (p Problem) panels(ctx context.Context, s acoustics.Surface, stock Stock) [
 // panelFills tunes one panel with each fill, and without, and keeps the best.
 func (p Problem) panelFills(at resonators.Placement, sheet Sheet, stock Stock) []Candidate {
 	var out []Candidate
-	for i := -1; i < len(stock.Fills); i++ {
-		var fill *resonators.Fill
+	for _, wool := range stock.fills() {
 		least := 0.02
-		if i >= 0 {
-			fill = &resonators.Fill{Thickness: stock.Fills[i], FlowResistivity: stock.FillFlow}
-			least = stock.Fills[i] + 0.01 // clear of the moving sheet
+		if wool.Thickness > 0 {
+			least = wool.Thickness + 0.01 // clear of the moving sheet
 		}
+		fill := wool.fill()
 		if c, ok := p.panel(at, sheet, fill, least); ok {
 			out = append(out, c)
 		}
 	}
-	slices.SortStableFunc(out, byWorth)
+	slices.SortStableFunc(out, p.byWorth)
 	return out[:min(1, len(out))]
 }
 

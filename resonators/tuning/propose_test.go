@@ -51,7 +51,7 @@ func TestProposalsCanBeBuilt(t *testing.T) {
 		if err := c.Absorber.Validate(); err != nil {
 			t.Errorf("%d: %v", i, err)
 		}
-		if math.Abs(c.Oscillator.Natural/p.Mode.Hz-1) > meets {
+		if c.Absorber.Kind() != "porous" && math.Abs(c.Oscillator.Natural/p.Mode.Hz-1) > meets {
 			t.Errorf("%d: resonates at %.2f Hz, the mode is at %.2f", i, c.Oscillator.Natural, p.Mode.Hz)
 		}
 		if c.Depth > p.Depth+1e-9 {

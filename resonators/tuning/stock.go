@@ -1,5 +1,7 @@
 package tuning
 
+import "stillroom/resonators"
+
 // Sheet is a sheet material as sold.
 type Sheet struct {
 	Name                                         string
@@ -14,23 +16,41 @@ type Tube struct {
 // Inside returns the mouth's diameter, m.
 func (t Tube) Inside() float64 { return t.Outside - 2*t.Wall }
 
+// Wool is a porous slab; one of no thickness stands for none.
+type Wool struct {
+	Thickness, Flow float64 // m, Pa·s/m²
+}
+
+func (w Wool) fill() *resonators.Fill {
+	if w.Thickness == 0 {
+		return nil
+	}
+	return &resonators.Fill{Thickness: w.Thickness, FlowResistivity: w.Flow}
+}
+
 // Stock is what may be bought.
 type Stock struct {
 	Panels []Sheet   // for membranes
 	Boards []float64 // thicknesses for boxes, m
 	Tubes  []Tube
-	Fills  []float64 // thicknesses of porous slabs, m
-	// FillFlow is the slabs' flow resistivity, Pa·s/m².
-	FillFlow float64
+	Wools  []Wool
+	Fronts []float64    // thicknesses of sheets to be drilled, m
+	Drills []float64    // diameters, m
+	Slats  [][2]float64 // widths and thicknesses, m
+	Gaps   []float64    // between slats, m
+	Micro  [][2]float64 // sheet and hole of micro-perforated sheets, m
 }
 
-// CommonStock returns what most builders' merchants hold.
+// fills returns the slabs, and none before them.
+func (s Stock) fills() []Wool { return append([]Wool{{}}, s.Wools...) }
+
+// CommonStock returns what most builders' merchants hold, in short.
 //
 // Thicknesses: common practice. Densities and moduli: middle of the typical
 // ranges (Beranek & Vér, Noise and Vibration Control Engineering; Hopkins,
 // Sound Insulation, 2007; from memory). Pipe: plastic drain pipe, common practice.
 // Slabs: mineral wool of about 40 kg/m³, whose flow resistivity varies by a
-// third to a half between makers.
+// third to a half between makers. Gaps of slats: 3 to 10 mm, common practice.
 func CommonStock() Stock {
 	return Stock{
 		Panels: []Sheet{
@@ -53,7 +73,11 @@ func CommonStock() Stock {
 			{0.040, 0.003}, {0.050, 0.003}, {0.075, 0.003}, {0.090, 0.003},
 			{0.110, 0.0032}, {0.125, 0.0032}, {0.160, 0.0032},
 		},
-		Fills:    []float64{0.025, 0.05, 0.075, 0.1},
-		FillFlow: 10000,
+		Wools:  []Wool{{0.025, 10000}, {0.05, 10000}, {0.075, 10000}, {0.1, 10000}},
+		Fronts: []float64{0.006, 0.009, 0.012},
+		Drills: []float64{0.004, 0.006, 0.008, 0.01},
+		Slats:  [][2]float64{{0.04, 0.02}, {0.07, 0.02}, {0.095, 0.02}},
+		Gaps:   []float64{0.003, 0.005, 0.01},
+		Micro:  [][2]float64{{0.0005, 0.0005}, {0.001, 0.0005}, {0.001, 0.0008}},
 	}
 }
