@@ -40,12 +40,6 @@ type pattern struct {
 	loose bool
 }
 
-// looseUnit is a pattern that stands alone, with the air mass before it.
-type looseUnit struct {
-	unit Unit
-	load float64 // 1/m
-}
-
 // condense puts patterns in place of the tiles of wide absorbers.
 func (f *Field) condense() {
 	f.raw = rawPorts{f.units, f.weights, f.sums}
@@ -179,7 +173,7 @@ func (f *Field) recast(patterns []pattern) {
 		u := raw.units[p.first]
 		if p.loose {
 			if u.Natural > 0 {
-				f.loose = append(f.loose, looseUnit{u, f.mixed(p, p)[0]})
+				f.loose = append(f.loose, p)
 			}
 			continue
 		}
@@ -281,13 +275,14 @@ func (f *Field) pairUnity() {
 // in Hz: the zeros of Z + jωρ·S_1, by Newton's method.
 func (f *Field) loosePoles(upTo float64) []AbsorberPole {
 	var list []AbsorberPole
-	for _, l := range f.loose {
-		hz, ok := l.unit.resonance(l.load, f.room.Air.Density)
+	for _, p := range f.loose {
+		unit, load := f.raw.units[p.first], f.mixed(p, p)[0]
+		hz, ok := unit.resonance(load, f.room.Air.Density)
 		if !ok {
 			continue
 		}
 		z := func(w complex128) complex128 {
-			return l.unit.Impedance(w) + 1i*w*complex(f.room.Air.Density*l.load, 0)
+			return unit.Impedance(w) + 1i*w*complex(f.room.Air.Density*load, 0)
 		}
 		root := complex(2*math.Pi*hz, 0)
 		for range 30 {
@@ -302,12 +297,12 @@ func (f *Field) loosePoles(upTo float64) []AbsorberPole {
 		if real(root) <= 0 || imag(root) <= 0 || imag(root) > tallest || natural > upTo || math.Abs(natural/hz-1) > 0.5 {
 			continue
 		}
-		p := Pole{Oscillator: Oscillator{Natural: natural, Decay: imag(root)}, Omega: root,
+		q := Pole{Oscillator: Oscillator{Natural: natural, Decay: imag(root)}, Omega: root,
 			Residues: make([]complex128, len(f.seats)), LevelDB: make([]float64, len(f.seats))}
-		for e := range p.LevelDB {
-			p.LevelDB[e] = math.NaN()
+		for e := range q.LevelDB {
+			q.LevelDB[e] = math.NaN()
 		}
-		list = append(list, AbsorberPole{Pole: p, Owner: l.unit.Owner})
+		list = append(list, AbsorberPole{Pole: q, Owner: unit.Owner})
 	}
 	return list
 }

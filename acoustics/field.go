@@ -58,8 +58,8 @@ type Field struct {
 	unity   []float64 // [port]: of the uniform mode, 1 but for patterns
 	uniform []float64 // [pair]: product of both
 	raw     rawPorts  // before the tiles of wide absorbers were condensed
-	loose   []looseUnit
-	alike   []bool // [unit]: has the impedance of the one before it; nil: none has
+	loose   []pattern // of them those that stand alone
+	alike   []bool    // [unit]: has the impedance of the one before it; nil: none has
 	statics *statics
 	long    [][]float64 // [port]: weights in the static sums' long half
 }

@@ -93,7 +93,10 @@ func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, tot
 			return Poles{}, err
 		}
 	}
-	return f.listed(ctx, paths, upTo, edge, counted, distants)
+	poles, err := f.listed(ctx, paths, upTo, edge, counted, distants)
+	poles.Absorbers = append(poles.Absorbers, f.loosePoles(upTo)...)
+	sortPoles(poles.Absorbers)
+	return poles, err
 }
 
 // PolesNear follows only the modes between two frequencies in Hz, and the units that
@@ -243,7 +246,6 @@ func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rec
 			p.Absorbers = append(p.Absorbers, AbsorberPole{Pole: *shown[i], Owner: f.units[a.unit].Owner})
 		}
 	}
-	p.Absorbers = append(p.Absorbers, f.loosePoles(upTo)...)
 	sortPoles(p.Absorbers)
 	return p, ctx.Err()
 }
