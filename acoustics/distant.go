@@ -37,11 +37,12 @@ const (
 // shortest T60 listed.
 const tallest = 3 * math.Ln10 / shortestT60
 
-// newDistants covers Re ω from 0 up to a frequency in Hz.
-func (f *Field) newDistants(ctx context.Context, upTo float64) ([]distant, error) {
+// newDistants covers Re ω between two frequencies in Hz.
+func (f *Field) newDistants(ctx context.Context, from, upTo float64) ([]distant, error) {
 	var (
-		count = int(math.Ceil(2 * math.Pi * upTo / stretchWidth))
-		width = 2 * math.Pi * upTo / float64(count)
+		start = 2 * math.Pi * from
+		count = int(math.Ceil((2*math.Pi*upTo - start) / stretchWidth))
+		width = (2*math.Pi*upTo - start) / float64(count)
 		all   = make([]distant, count)
 		group sync.WaitGroup
 	)
@@ -51,7 +52,7 @@ func (f *Field) newDistants(ctx context.Context, upTo float64) ([]distant, error
 			t := f.newTransfer()
 			// The highest stretches, which are dear, first.
 			for i := count - 1 - w; i >= 0 && ctx.Err() == nil; i -= workers {
-				all[i] = distant{low: float64(i) * width, high: float64(i+1) * width}
+				all[i] = distant{low: start + float64(i)*width, high: start + float64(i+1)*width}
 				f.fitDistant(&all[i], t)
 			}
 		})

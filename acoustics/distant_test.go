@@ -12,7 +12,7 @@ import (
 // it is used on; that those stand for all modes is another test's business.
 func TestDistantsAgreeWithCompleteSums(t *testing.T) {
 	f := studioField(t, eightBottles(studio(t)))
-	distants, err := f.newDistants(context.Background(), 1.2*200)
+	distants, err := f.newDistants(context.Background(), 0, 1.2*200)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -74,7 +74,7 @@ type path struct {
 // Newton's method with the known zeros divided out. progress, where not nil, is
 // told how many of how many paths are done. It returns the error of ctx.
 func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, total int)) (Poles, error) {
-	distants, err := f.newDistants(ctx, 1.3*upTo)
+	distants, err := f.newDistants(ctx, 0, 1.3*upTo)
 	if err != nil {
 		return Poles{}, err
 	}
@@ -99,23 +99,24 @@ func (f *Field) Poles(ctx context.Context, upTo float64, progress func(done, tot
 	return poles, err
 }
 
-// PolesNear follows only the modes between two frequencies in Hz, and the units that
-// resonate about there, without counting what they come to: for a search that tries
+// PolesNear follows only the modes between two frequencies in Hz, and those units of one
+// owner that resonate about there; where order is no uniform one, of the modes only that
+// one. It goes without counting what they come to: for a search that tries
 // many absorbers and has the room counted at its end. A pole that it does not find is
-// nil or missing. Modes[i] belongs to the i-th of those modes.
-func (f *Field) PolesNear(ctx context.Context, low, high float64) (Poles, error) {
-	distants, err := f.newDistants(ctx, 1.3*high)
+// nil or missing. Modes[i] belongs to the i-th of those modes that are followed.
+func (f *Field) PolesNear(ctx context.Context, low, high float64, owner int, order [3]int) (Poles, error) {
+	distants, err := f.newDistants(ctx, 0.75*low, 1.15*high)
 	if err != nil {
 		return Poles{}, err
 	}
 	var paths []path
 	for i, m := range f.modes.damped {
-		if m.Hz >= low && m.Hz <= high {
+		if m.Hz >= low && m.Hz <= high && (order == [3]int{} || m.Order == order) {
 			paths = append(paths, path{mode: i, unit: -1})
 		}
 	}
 	for u, unit := range f.units {
-		if unit.Natural >= low/unitsAbove && unit.Natural <= unitsAbove*high {
+		if unit.Owner == owner && unit.Natural >= low/unitsAbove && unit.Natural <= unitsAbove*high {
 			paths = append(paths, path{mode: -1, unit: u})
 		}
 	}
@@ -124,6 +125,18 @@ func (f *Field) PolesNear(ctx context.Context, low, high float64) (Poles, error)
 	}
 	dropTwins(paths)
 	return f.listed(ctx, paths, high, rectangle{}, 0, distants)
+}
+
+// ModesNear returns the bare modes between two frequencies in Hz, in the order in which
+// PolesNear lists what became of them.
+func (f *Field) ModesNear(low, high float64) []DampedMode {
+	var list []DampedMode
+	for _, m := range f.modes.damped {
+		if m.Hz >= low && m.Hz <= high {
+			list = append(list, m)
+		}
+	}
+	return list
 }
 
 // starts lists the modes and units that are followed.

@@ -133,6 +133,9 @@ func displaced(before, after project.Absorber, outside float64) project.Absorber
 	return after
 }
 
+// fieldAbove is how far above a mode the field reaches that its absorbers are tried in.
+const fieldAbove = 1.6
+
 // bench tries absorbers in the room of a result, each as far as one mode needs it.
 type bench struct {
 	r    *Result
@@ -157,7 +160,7 @@ func (b *bench) place(ctx context.Context, a project.Absorber) (*acoustics.Field
 		err   error
 	)
 	if b.last == nil {
-		b.last, err = acoustics.NewField(ctx, f.shell.room, f.sources, f.seats, units, 1.5*r.Modes[b.q.Mode].Mode.Hz)
+		b.last, err = acoustics.NewField(ctx, f.shell.room, f.sources, f.seats, units, fieldAbove*r.Modes[b.q.Mode].Mode.Hz)
 	} else {
 		b.last, err = b.last.Rearranged(ctx, f.sources, f.seats, units)
 	}
@@ -172,39 +175,32 @@ func (b *bench) worth(ctx context.Context, a project.Absorber) float64 {
 		return math.Inf(1)
 	}
 	if b.q.Goal == tuning.LowPeak {
-		levels, err := f.Levels(ctx, b.hz)
+		top, err := b.peak(ctx, f)
 		if err != nil {
 			return math.Inf(1)
-		}
-		top := math.Inf(-1)
-		for _, seat := range levels.Treated {
-			top = math.Max(top, slices.Max(seat))
 		}
 		return top
 	}
 	m := b.r.Modes[b.q.Mode].Mode
-	poles, err := f.PolesNear(ctx, m.Hz/around, m.Hz*around)
+	seen, err := b.r.look(ctx, f, m.Order, m.Hz, false)
 	if err != nil {
 		return math.Inf(1)
 	}
-	var own, list []PoleRow
-	near := 0
-	for _, x := range b.r.Modes {
-		if x.Mode.Hz < m.Hz/around || x.Mode.Hz > m.Hz*around {
-			continue
-		}
-		if x.Mode.Order == m.Order && near < len(poles.Modes) && poles.Modes[near] != nil {
-			own = append(own, PoleRow{Oscillator: poles.Modes[near].Oscillator, LevelDB: poles.Modes[near].LevelDB})
-		}
-		near++
-	}
-	for _, p := range poles.Absorbers {
-		if p.Owner == len(b.r.Project.Absorbers) && p.Natural > m.Hz/around {
-			list = append(list, PoleRow{Oscillator: p.Oscillator, LevelDB: p.LevelDB})
-		}
-	}
-	if list = heard(own, list); len(list) > 0 {
-		return list[0].Oscillator.T60()
+	if after := seen.after(); len(after) > 0 {
+		return after[0].Oscillator.T60()
 	}
 	return 0
+}
+
+// peak returns the highest treated level near the mode at any seat, dB.
+func (b *bench) peak(ctx context.Context, f *acoustics.Field) (float64, error) {
+	levels, err := f.Levels(ctx, b.hz)
+	if err != nil {
+		return 0, err
+	}
+	top := math.Inf(-1)
+	for _, seat := range levels.Treated {
+		top = math.Max(top, slices.Max(seat))
+	}
+	return top, nil
 }

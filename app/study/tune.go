@@ -42,7 +42,7 @@ type Proposal struct {
 	// PeakBefore and PeakAfter are the highest treated levels within a sixth of an
 	// octave of the mode at any seat, without and with the proposal, dB.
 	PeakBefore, PeakAfter float64
-	Neighbours            []Neighbour // modes within a third of an octave
+	Neighbours            []Neighbour // modes within a third of an octave; of the best few
 	VolumeM3, SheetM2     float64     // of all units
 	Tolerances            []tuning.Tolerance
 	// ColderS and WarmerS are the longest T60 of After with the air 5 °C colder and
@@ -113,7 +113,7 @@ func Tune(ctx context.Context, r *Result, q TuneRequest, progress TuneProgress) 
 	}
 	out := ranked(found, q.Goal)
 	for i := range min(len(out), weathered) {
-		if err := r.weather(ctx, q, &out[i]); err != nil {
+		if err := cmp.Or(r.weather(ctx, q, &out[i]), r.neighbours(ctx, q, &out[i])); err != nil {
 			return nil, err
 		}
 	}
@@ -208,8 +208,8 @@ func (r *Result) problem(q TuneRequest) tuning.Problem {
 // that come of it are looked at, as a ratio: a third of an octave, and a little.
 const around = 1.28
 
-// try refines a candidate in the room, builds it into the project and asks the
-// treated room as a whole.
+// try refines a candidate in the room, builds it into the project and looks at what
+// becomes of the mode.
 func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Proposal, error) {
 	m := r.Modes[q.Mode]
 	a := buildable(c)
@@ -219,26 +219,108 @@ func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Pr
 		return Proposal{}, err
 	}
 	p := Proposal{Absorber: a, Candidate: c, MinVolumeM3: c.LeastVolume, MinAreaM2: c.LeastArea, Before: m.Oscillator,
-		Spot: spot(r.Room.Box, c.At), VolumeM3: Volume(a), SheetM2: SheetArea(a)}
-	treated, err := r.with(ctx, q, a, 0)
+		Spot: spot(r.Room.Box, c.At), VolumeM3: Volume(a), SheetM2: SheetArea(a), PeakBefore: r.peakNear(m.Mode.Hz)}
+	b := r.newBench(q)
+	field, err := b.place(ctx, a)
 	if err != nil {
 		return p, err
 	}
-	row := treated.Absorbers[len(treated.Absorbers)-1]
-	if o := row.Report.Oscillator; o != nil {
-		p.F0Hz, p.Q = row.InRoomHz, o.Q()
+	design := Design(a)
+	if e, ok := resonators.EquivalentOf(design, r.Air, a.Size); ok {
+		p.F0Hz, p.Q = e.Oscillator.Natural, e.Oscillator.Q()
+		if hz, ok := field.UnitResonance(len(r.stages.kit.units)); ok {
+			p.F0Hz = hz
+		}
 	}
-	p.After = treated.after(q.Mode)
-	p.Meets = len(p.After) > 0 && p.Longest() <= r.target(q) || len(p.After) == 0
-	p.PeakBefore, p.PeakAfter = r.peakNear(m.Mode.Hz), treated.peakNear(m.Mode.Hz)
+	seen, err := r.look(ctx, field, m.Mode.Order, m.Mode.Hz, false)
+	if err != nil {
+		return p, err
+	}
+	p.After = seen.after()
+	p.Meets = p.Longest() <= r.target(q)
+	if p.PeakAfter, err = b.peak(ctx, field); err != nil {
+		return p, err
+	}
+	p.Tolerances = tolerances(resonators.Sensitivities(design, r.Air, a.Size), p.After)
+	return p, nil
+}
+
+// neighbours works out what a proposal does to the modes within a third of an octave.
+func (r *Result) neighbours(ctx context.Context, q TuneRequest, p *Proposal) error {
+	m := r.Modes[q.Mode].Mode
+	field, err := r.newBench(q).place(ctx, p.Absorber)
+	if err != nil {
+		return err
+	}
+	seen, err := r.look(ctx, field, m.Order, m.Hz, true)
+	if err != nil {
+		return err
+	}
+	p.Neighbours = nil
 	for i, n := range r.Modes {
-		if i == q.Mode || i >= len(treated.Modes) || math.Abs(math.Log(n.Mode.Hz/m.Mode.Hz)) > math.Log(around) {
+		if i != q.Mode && math.Abs(math.Log(n.Mode.Hz/m.Hz)) < math.Log(around) {
+			p.Neighbours = append(p.Neighbours, Neighbour{Mode: i, Before: n.own(), After: seen.others[n.Mode.Order]})
+		}
+	}
+	return nil
+}
+
+// own returns the T60 of the pole that a mode is as the room stands, s; 0 where it is no
+// longer listed.
+func (m ModeRow) own() float64 {
+	if len(m.Treated) > 0 {
+		return m.Treated[0].Oscillator.T60()
+	}
+	if len(m.Absorbers) > 0 {
+		return 0
+	}
+	return m.Oscillator.T60()
+}
+
+// look is what is seen of a mode, its neighbours and the last absorber in a room.
+type look struct {
+	own, near []PoleRow
+	others    map[[3]int]float64 // T60 of the neighbours' own poles, s
+}
+
+// after returns the poles that the mode and its absorber have.
+func (l look) after() []PoleRow { return heard(l.own, l.near) }
+
+// look follows a mode of an order near a frequency in Hz, its neighbours where they are
+// wanted, and those poles of the last absorber that come of units resonating there.
+func (r *Result) look(ctx context.Context, f *acoustics.Field, order [3]int, hz float64, neighbours bool) (look, error) {
+	l := look{others: map[[3]int]float64{}}
+	low, high := hz/around, hz*around
+	only := order
+	if neighbours {
+		only = [3]int{}
+	}
+	poles, err := f.PolesNear(ctx, low, high, len(r.Project.Absorbers), only)
+	if err != nil {
+		return l, err
+	}
+	i := -1
+	for _, m := range f.ModesNear(low, high) {
+		if !neighbours && m.Order != order {
 			continue
 		}
-		p.Neighbours = append(p.Neighbours, Neighbour{Mode: i, Before: n.Now(), After: treated.Modes[i].Now()})
+		i++
+		p := poles.Modes[i]
+		if p == nil {
+			continue
+		}
+		if m.Order == order {
+			l.own = append(l.own, PoleRow{Oscillator: p.Oscillator, LevelDB: p.LevelDB, Absorber: -1})
+		} else {
+			l.others[m.Order] = p.T60()
+		}
 	}
-	p.Tolerances = tolerances(row, p.After)
-	return p, nil
+	for _, p := range poles.Absorbers {
+		if p.Natural > low {
+			l.near = append(l.near, PoleRow{Oscillator: p.Oscillator, LevelDB: p.LevelDB, Absorber: p.Owner})
+		}
+	}
+	return l, nil
 }
 
 // Now returns the longest T60 of a mode as it stands, s.
@@ -249,34 +331,9 @@ func (m ModeRow) Now() float64 {
 	return m.Oscillator.T60()
 }
 
-// with studies the project with one more absorber, the air warmer by some °C, as far
-// as the request's mode needs it.
-func (r *Result) with(ctx context.Context, q TuneRequest, a project.Absorber, warmer float64) (*Result, error) {
-	p := r.Project
-	p.Absorbers = append(slices.Clone(p.Absorbers), a)
-	p.Air.TemperatureC = math.Max(-20, math.Min(50, p.Air.TemperatureC+warmer))
-	hz := r.Modes[q.Mode].Mode.Hz
-	o := Options{FromHz: hz / around, ToHz: hz * around, Points: 60, ModesToHz: around * hz * 1.02, FieldDeg: r.Options.FieldDeg}
-	return Run(ctx, p, o, nil, nil)
-}
-
 // unheard is how far below the loudest pole of the mode and its absorber a pole may
 // lie at every seat and be left out of account, dB.
 const unheard = 20
-
-// after returns the poles that a mode and the last absorber of a project have, the
-// longest first: the mode's own, and those of the absorber that lie near it and that
-// some seat hears.
-func (r *Result) after(mode int) []PoleRow {
-	hz := r.Modes[mode].Mode.Hz
-	var near []PoleRow
-	for _, p := range r.AbsorberPoles {
-		if p.Absorber == len(r.Project.Absorbers)-1 && math.Abs(math.Log(p.Oscillator.Natural/hz)) < math.Log(around) {
-			near = append(near, p)
-		}
-	}
-	return heard(r.Modes[mode].Treated, near)
-}
 
 // heard joins a mode's own poles and those of its absorber, the longest first, without
 // those of the absorber that no seat hears.
@@ -318,8 +375,8 @@ func (r *Result) peakNear(hz float64) float64 {
 	return top
 }
 
-// weathered is how many of the best proposals are tried in colder and warmer air, by
-// weatherC each way.
+// weathered is how many of the best proposals are looked at more closely: in air colder
+// and warmer by weatherC, and for what they do to the neighbours.
 const (
 	weathered = 5
 	weatherC  = 5.0
@@ -327,15 +384,31 @@ const (
 
 // weather works out what colder and warmer air do to a proposal.
 func (r *Result) weather(ctx context.Context, q TuneRequest, p *Proposal) error {
+	m := r.Modes[q.Mode].Mode
 	for _, x := range []struct {
 		by float64
 		to *float64
 	}{{-weatherC, &p.ColderS}, {weatherC, &p.WarmerS}} {
-		t, err := r.with(ctx, q, p.Absorber, x.by)
+		with := r.Project.AddAbsorber(p.Absorber)
+		with.Air.TemperatureC = math.Max(-20, math.Min(50, with.Air.TemperatureC+x.by))
+		shell, err := shellStage(with, r.Options, nil)
 		if err != nil {
 			return err
 		}
-		if after := t.after(q.Mode); len(after) > 0 {
+		var (
+			hz  = m.Hz * shell.room.Air.SpeedOfSound / r.Air.SpeedOfSound
+			kit = newKit(with, shell.room.Air, 90, nil, false)
+			f   = r.stages.field
+		)
+		field, err := acoustics.NewField(ctx, shell.room, f.sources, f.seats, kit.units, fieldAbove*hz)
+		if err != nil {
+			return err
+		}
+		seen, err := r.look(ctx, field, m.Order, hz, false)
+		if err != nil {
+			return err
+		}
+		if after := seen.after(); len(after) > 0 {
 			*x.to = after[0].Oscillator.T60()
 		}
 	}
@@ -344,12 +417,12 @@ func (r *Result) weather(ctx context.Context, q TuneRequest, p *Proposal) error 
 
 // tolerances returns each dimension's pull and how far it may be off while f0 moves
 // by no more than half of the half-power width of the treated pair's slowest pole.
-func tolerances(row AbsorberRow, after []PoleRow) []tuning.Tolerance {
+func tolerances(pulls []resonators.Sensitivity, after []PoleRow) []tuning.Tolerance {
 	if len(after) == 0 {
 		return nil
 	}
 	var list []tuning.Tolerance
-	for _, s := range row.Sensitivities {
+	for _, s := range pulls {
 		list = append(list, tuning.Tolerance{Sensitivity: s, Allowed: s.Tolerance(after[0].Oscillator.HalfPowerWidth() / 2)})
 	}
 	return list
