@@ -2,6 +2,7 @@ package resonators
 
 import (
 	"math"
+	"slices"
 
 	"stillroom/acoustics"
 )
@@ -35,10 +36,8 @@ func resonance(a Absorber, air acoustics.Air) (hz float64, exists bool) {
 	reactance := func(f float64) float64 {
 		return imag(a.Specific(complex(2*math.Pi*f, 0), air))
 	}
-	ratio := math.Pow(highestHz/lowestHz, 1.0/scanSteps)
 	lo, xlo := lowestHz, reactance(lowestHz)
-	for i := 1; i <= scanSteps; i++ {
-		hi := lowestHz * math.Pow(ratio, float64(i))
+	for _, hi := range scanned(a, air) {
 		xhi := reactance(hi)
 		if xlo < 0 && xhi >= 0 {
 			return crossing(reactance, lo, hi), true
@@ -46,6 +45,27 @@ func resonance(a Absorber, air acoustics.Air) (hz float64, exists bool) {
 		lo, xlo = hi, xhi
 	}
 	return 0, false
+}
+
+// scanned lists the frequencies at which the reactance is looked at, rising: a scan
+// even in log f, and just below each mode of an empty cavity, where the reactance runs
+// to +∞ whatever stands before it, so that the crossing under it, narrow for a stiff or
+// a heavy front, is not stepped over.
+func scanned(a Absorber, air acoustics.Air) []float64 {
+	const below = 1e-9 // relative
+	var list []float64
+	ratio := math.Pow(highestHz/lowestHz, 1.0/scanSteps)
+	for i := 1; i <= scanSteps; i++ {
+		list = append(list, lowestHz*math.Pow(ratio, float64(i)))
+	}
+	if l, ok := a.(layered); ok && l.cavity().empty() && l.cavity().depth() > 0 {
+		first := air.SpeedOfSound / (2 * l.cavity().depth())
+		for n := 1; float64(n)*first < highestHz; n++ {
+			list = append(list, float64(n)*first*(1-below), float64(n)*first*(1+below))
+		}
+		slices.Sort(list)
+	}
+	return list
 }
 
 // crossing returns the zero of a rising function between lo and hi by bisection

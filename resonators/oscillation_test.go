@@ -138,3 +138,19 @@ func TestPanelIsWarnedOfItsPlateResonance(t *testing.T) {
 		}
 	}
 }
+
+// The lowest crossing counts, however narrow: a stiff sheet before a deep empty cavity
+// has one just below the cavity's first mode, at every depth alike.
+func TestLowestCrossingIsNotSteppedOver(t *testing.T) {
+	for depth := 0.9; depth < 1.9; depth += 0.037 {
+		p := Panel{Mass: 7.2, Thickness: 0.012, Youngs: 7e9, Poisson: 0.3, LossFactor: 0.03, Cavity: depth}
+		e, ok := EquivalentOf(p, testAir, [2]float64{0.3, 0.3})
+		first := testAir.SpeedOfSound / (2 * depth)
+		if !ok || e.Oscillator.Natural >= first || e.Oscillator.Natural < 0.98*first {
+			t.Errorf("%.3f m deep: %.2f Hz, the cavity's first mode is at %.2f Hz", depth, e.Oscillator.Natural, first)
+		}
+		if e.Mass <= 0 || e.Oscillator.Decay < 0 {
+			t.Errorf("%.3f m deep: mass %v, decay %v", depth, e.Mass, e.Oscillator.Decay)
+		}
+	}
+}
