@@ -189,23 +189,70 @@ func (s *writer) absorberList() {
 	s.table(columns, rows)
 	s.paragraph(fmt.Sprintf("Resonance and Q are calculated for the absorber alone; in its place the room adds its own air. Seal every cavity: a leak turns a tuned absorber into a badly tuned one. Common practice: cavity depth to ± %s, holes to ± %s; panel mass varies by 5 to 10 %%, flow resistivity by 30 to 50 %%, which moves a resonance by several per cent.",
 		units.Small(0.003, s.sys), drill(s.sys)), textSize)
-	s.tolerances()
 }
 
-// tolerances lists what each dimension does to the resonance.
-func (s *writer) tolerances() {
-	var rows [][]string
-	for _, a := range s.r.Absorbers {
-		for _, d := range a.Sensitivities {
-			words, steps := Step(d, s.sys)
-			rows = append(rows, []string{a.ID, words, signed(d.F0PerStep*steps) + " Hz", signed(d.QPerStep * steps)})
-		}
-	}
-	if len(rows) == 0 {
+// build is the sheets that each absorber is built from: section, parts, tolerances.
+func (s *writer) build() {
+	if len(s.r.Absorbers) == 0 {
 		return
 	}
-	s.heading("What a step of each dimension does")
-	s.table([]column{{"Id", 0, false}, {"Step", 1, false}, {"Resonance", 0, true}, {"Q", 0, true}}, rows)
+	s.sheet = "Build sheets"
+	s.page()
+	const sectionHeight = 165.0
+	for i, a := range s.r.Project.Absorbers {
+		if s.y+sectionHeight+150 > s.bottom() {
+			s.page()
+		}
+		s.heading(fmt.Sprintf("%s, %s, %d to build, each %s × %s", a.ID, KindWords(a.Kind), a.Units, units.Small(a.Size[0], s.sys), units.Small(a.Size[1], s.sys)))
+		c, end := on(s.doc, margin, s.y, s.w-2*margin, sectionHeight)
+		figures.DrawAbsorber(c, a, s.o.US, figures.Print())
+		end()
+		s.y += sectionHeight + 2
+		s.paragraph("Section through one unit, the room below. "+upperFirst(strings.Join(Dimensions(a, s.sys), "; "))+".", textSize)
+		s.parts(a)
+		s.tolerances(i)
+	}
+	s.paragraph("Parts are for boxes and frames of board of "+units.Small(study.BoxBoard, s.sys)+", outside sizes, without the saw's kerf. Calculated figures: have a first one measured before more are built.", textSize)
+}
+
+// upperFirst begins a text with a capital.
+func upperFirst(t string) string {
+	if t == "" {
+		return t
+	}
+	return strings.ToUpper(t[:1]) + t[1:]
+}
+
+// parts is the cut list of an absorber.
+func (s *writer) parts(a project.Absorber) {
+	var rows [][]string
+	for _, c := range study.CutList(a) {
+		size := units.Small(c.W, s.sys) + " × " + units.Small(c.H, s.sys)
+		thick := units.Small(c.Thickness, s.sys)
+		if c.Thickness == 0 {
+			size, thick = units.Small(c.W, s.sys)+" inside, "+units.Small(c.H, s.sys)+" long", ""
+		}
+		rows = append(rows, []string{c.Part, fmt.Sprint(c.Count), size, thick})
+	}
+	s.table([]column{{"Part", 0, false}, {"Count", 0, true}, {"Size", 1, false}, {"Thick", 0, true}}, rows)
+}
+
+// tolerances lists what each dimension of an absorber does to its resonance, and how far
+// it may be off.
+func (s *writer) tolerances(absorber int) {
+	var rows [][]string
+	allowed := s.r.Tolerances(absorber)
+	for k, d := range s.r.Absorbers[absorber].Sensitivities {
+		words, steps := Step(d, s.sys)
+		off := ""
+		if k < len(allowed) {
+			off = Allowed(allowed[k], s.sys)
+		}
+		rows = append(rows, []string{words, signed(d.F0PerStep*steps) + " Hz", signed(d.QPerStep * steps), off})
+	}
+	if len(rows) > 0 {
+		s.table([]column{{"Step", 1, false}, {"Resonance", 0, true}, {"Q", 0, true}, {"May be off by", 0, true}}, rows)
+	}
 }
 
 // criteria is the sheet of the published figures of merit.

@@ -74,6 +74,7 @@ func Write(out io.Writer, r *study.Result, o Options) error {
 	s.lanes()
 	s.decayInTime()
 	s.absorberList()
+	s.build()
 	s.cautions()
 	var b bytes.Buffer
 	if err := doc.Output(&b); err != nil {

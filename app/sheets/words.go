@@ -8,6 +8,7 @@ import (
 	"stillroom/app/project"
 	"stillroom/app/units"
 	"stillroom/resonators"
+	"stillroom/resonators/tuning"
 )
 
 // KindWords names a kind of absorber as a joiner would.
@@ -115,6 +116,35 @@ func Step(d resonators.Sensitivity, s units.System) (words string, steps float64
 		}
 	}
 	return d.Words(text), size / d.Step
+}
+
+// Allowed says how far a dimension may be off, in the units of a system.
+func Allowed(t tuning.Tolerance, s units.System) string {
+	if math.IsInf(t.Allowed, 0) || t.Value > 0 && t.Allowed > t.Value/2 {
+		return "any"
+	}
+	metric := s == units.Metric
+	switch t.Quantity() {
+	case resonators.Length:
+		if metric {
+			return fmt.Sprintf("± %.1f mm", 1000*t.Allowed)
+		}
+		return fmt.Sprintf("± %.3f in", t.Allowed/units.Inch)
+	case resonators.Volume:
+		if metric {
+			return fmt.Sprintf("± %.1f L", 1000*t.Allowed)
+		}
+		return fmt.Sprintf("± %.2f ft³", t.Allowed/units.CubicFoot)
+	case resonators.AreaMass:
+		if metric {
+			return fmt.Sprintf("± %.2f kg/m²", t.Allowed)
+		}
+		return fmt.Sprintf("± %.3f lb/ft²", t.Allowed/units.PoundPerSquareFoot)
+	}
+	if t.Value > 0 {
+		return fmt.Sprintf("± %.0f %%", 100*t.Allowed/t.Value)
+	}
+	return fmt.Sprintf("± %.3g", t.Allowed)
 }
 
 // Measured writes a criterion's figure in the units of a system: lengths, areas

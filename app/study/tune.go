@@ -427,3 +427,14 @@ func tolerances(pulls []resonators.Sensitivity, after []PoleRow) []tuning.Tolera
 	}
 	return list
 }
+
+// Tolerances returns how far each dimension of a placed absorber may be off: while f0
+// moves by no more than half of the half-power width of the slowest pole that the mode
+// it is tuned to has; none where it is tuned to no mode.
+func (r *Result) Tolerances(absorber int) []tuning.Tolerance {
+	row := r.Absorbers[absorber]
+	if row.Target < 0 {
+		return nil
+	}
+	return tolerances(row.Sensitivities, heard(r.Modes[row.Target].Treated, r.Modes[row.Target].Pair))
+}

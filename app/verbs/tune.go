@@ -12,7 +12,6 @@ import (
 	"stillroom/app/sheets"
 	"stillroom/app/study"
 	"stillroom/app/units"
-	"stillroom/resonators"
 	"stillroom/resonators/tuning"
 )
 
@@ -194,7 +193,7 @@ func tuneOf(r *study.Result, q study.TuneRequest, goal string, found []study.Pro
 		}
 		for _, t := range p.Tolerances {
 			words, steps := sheets.Step(t.Sensitivity, units.Metric)
-			x.Tolerances = append(x.Tolerances, toleranceJSON{t.Dimension, number(t.F0PerStep * steps), words, allowedText(t)})
+			x.Tolerances = append(x.Tolerances, toleranceJSON{t.Dimension, number(t.F0PerStep * steps), words, sheets.Allowed(t, units.Metric)})
 		}
 		out.Candidates = append(out.Candidates, x)
 	}
@@ -207,25 +206,6 @@ func orNull(v float64) number {
 		return number(math.NaN())
 	}
 	return number(v)
-}
-
-// allowedText says how far a dimension may be off.
-func allowedText(t tuning.Tolerance) string {
-	if math.IsInf(t.Allowed, 0) {
-		return "any"
-	}
-	switch t.Quantity() {
-	case resonators.Length:
-		return fmt.Sprintf("± %.1f mm", 1000*t.Allowed)
-	case resonators.Volume:
-		return fmt.Sprintf("± %.1f L", 1000*t.Allowed)
-	case resonators.AreaMass:
-		return fmt.Sprintf("± %.2f kg/m²", t.Allowed)
-	}
-	if t.Value > 0 {
-		return fmt.Sprintf("± %.0f %%", 100*t.Allowed/t.Value)
-	}
-	return fmt.Sprintf("± %.3g", t.Allowed)
 }
 
 func tuneCSV(out tuneJSON) [][]string {
