@@ -35,13 +35,16 @@ func outside(name string) []string {
 	gonum := []string{"gonum.org/v1/gonum"}
 	pictures := []string{"gonum.org/v1/gonum", "gonum.org/v1/plot", "codeberg.org/go-fonts", "codeberg.org/go-pdf", "codeberg.org/go-latex", "git.sr.ht/~sbinet", "github.com/golang/freetype", "github.com/ajstarks/svgo", "golang.org/x"}
 	saving := []string{"github.com/google/renameio"}
+	optimising := []string{"golang.org/x/tools/container/intsets"} // what gonum/optimize rests on
 	switch name {
 	case "acoustics", "resonators", "resonators/tuning", "assets":
 		return gonum
 	case "samples", "app/units":
 		return nil
-	case "app/project", "app/internal/testcase", "app/study":
+	case "app/project", "app/internal/testcase":
 		return slices.Concat(gonum, saving)
+	case "app/study":
+		return slices.Concat(gonum, saving, optimising)
 	case "app/figures", "app/sheets", "app/verbs":
 		return slices.Concat(pictures, saving)
 	}

@@ -16,15 +16,6 @@ type Absorber interface {
 	Validate() error
 }
 
-var (
-	_ Absorber = Neck{}
-	_ Absorber = Panel{}
-	_ Absorber = Perforated{}
-	_ Absorber = Slotted{}
-	_ Absorber = Microperforated{}
-	_ Absorber = Porous{}
-)
-
 // layered is an absorber that is a thin front over a cavity of layers.
 type layered interface {
 	Absorber
@@ -80,28 +71,4 @@ func passive(z complex128) complex128 {
 
 // fitted returns a with the dimensions that a kind takes from its unit's size
 // filled in where they are not set, and with nothing shared with the caller.
-func fitted(a Absorber, size [2]float64) Absorber {
-	switch v := a.(type) {
-	case Neck:
-		if v.Front == [2]float64{} {
-			v.Front = size
-		}
-		return v
-	case Panel:
-		if v.Size == [2]float64{} {
-			v.Size = size
-		}
-		v.Fill = v.Fill.clone()
-		return v
-	case Perforated:
-		v.Fill = v.Fill.clone()
-		return v
-	case Slotted:
-		v.Fill = v.Fill.clone()
-		return v
-	case Porous:
-		v.JCA = v.JCA.clone()
-		return v
-	}
-	return a
-}
+func fitted(a Absorber, size [2]float64) Absorber { return detailsOf(a).sized(size) }

@@ -1,6 +1,7 @@
 package resonators
 
 import (
+	"fmt"
 	"math"
 
 	"stillroom/acoustics"
@@ -48,3 +49,47 @@ func (m Microperforated) Specific(omega complex128, air acoustics.Air) complex12
 func (m Microperforated) InRoom(omega complex128, area float64, air acoustics.Air) complex128 {
 	return faceInRoom(m, omega, area, air)
 }
+
+// Validate returns nil, or all *ValueError of the panel joined.
+func (m Microperforated) Validate() error {
+	c := checker{kind: m.Kind()}
+	c.positive("Sheet", m.Sheet, metres)
+	c.hole(m.Hole, m.Pitch)
+	c.positive("Cavity", m.Cavity, metres)
+	return c.result()
+}
+
+// dimensions lists what the resonance depends on.
+func (m Microperforated) dimensions() []dimension {
+	return []dimension{
+		{"Sheet", tenthMM, m.Sheet, func(x float64) Absorber { m := m; m.Sheet = x; return m }},
+		{"Hole", tenthMM, m.Hole, func(x float64) Absorber { m := m; m.Hole = x; return m }},
+		{"Pitch", tenthMM, m.Pitch, func(x float64) Absorber { m := m; m.Pitch = x; return m }},
+		{"Cavity", millimetre, m.Cavity, func(x float64) Absorber { m := m; m.Cavity = x; return m }},
+	}
+}
+
+// refilled has nothing to keep full.
+func (m Microperforated) refilled(Absorber) Absorber { return m }
+
+// sized takes nothing from the unit's size.
+func (m Microperforated) sized([2]float64) Absorber { return m }
+
+// microOpen is the open share above which micro-perforations, which are taken
+// not to interact, would share more than a quarter of their end correction.
+const microOpen = 0.03
+
+// warnings says where the holes are outside what the model means.
+func (m Microperforated) warnings(acoustics.Air, *acoustics.Oscillator) []string {
+	var w []string
+	if m.Hole >= 1e-3 {
+		w = append(w, "The model of a micro-perforated panel is meant for holes below 1 mm.")
+	}
+	if eps := m.OpenShare(); eps > microOpen {
+		w = append(w, fmt.Sprintf("With %.1f %% open the holes influence each other, which is not counted: the true tuning is higher.", 100*eps))
+	}
+	return w
+}
+
+// whole leaves a unit to be cut into tiles.
+func (m Microperforated) whole(at acoustics.Patch) (acoustics.Patch, bool) { return at, false }

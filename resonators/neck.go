@@ -1,6 +1,7 @@
 package resonators
 
 import (
+	"fmt"
 	"math"
 
 	"stillroom/acoustics"
@@ -83,4 +84,87 @@ func (n Neck) compliance(omega complex128, air acoustics.Air) complex128 {
 		c = complex(filled, 0) / mikiFluid(omega, n.FillFlow, air).bulkModulus(omega)
 	}
 	return c + complex(open/(air.Density*sq(air.SpeedOfSound)), 0)
+}
+
+// Validate returns nil, or all *ValueError of the box joined.
+func (n Neck) Validate() error {
+	c := checker{kind: n.Kind()}
+	c.positive("Cavity", n.Cavity, "m³")
+	c.positive("MouthRadius", n.MouthRadius, metres)
+	c.notNegative("Length", n.Length, metres)
+	c.need(n.Mouths >= 1, "Mouths", float64(n.Mouths), "", "1 or more")
+	c.notNegative("Gauze", n.Gauze, rayls)
+	c.positive("Front[0]", n.Front[0], metres)
+	c.positive("Front[1]", n.Front[1], metres)
+	area := n.Front[0] * n.Front[1]
+	c.need(!(n.mouthArea() >= area), "MouthRadius", n.MouthRadius, metres,
+		fmt.Sprintf("so small that the mouths fit the front of %g m²", area))
+	c.need(n.FillShare >= 0 && n.FillShare <= 1, "FillShare", n.FillShare, "", "between 0 and 1")
+	if n.FillShare > 0 {
+		c.positive("FillFlow", n.FillFlow, flowUnit)
+	}
+	return c.result()
+}
+
+// dimensions lists what the resonance depends on.
+func (n Neck) dimensions() []dimension {
+	d := []dimension{
+		{"Volume", litre, n.Cavity, func(x float64) Absorber { n := n; n.Cavity = x; return n }},
+		{"MouthRadius", millimetre, n.MouthRadius, func(x float64) Absorber { n := n; n.MouthRadius = x; return n }},
+		{"Length", millimetre, n.Length, func(x float64) Absorber { n := n; n.Length = x; return n }},
+		{"Gauze", edgeStep, n.Gauze, func(x float64) Absorber { n := n; n.Gauze = x; return n }},
+	}
+	if n.FillShare > 0 {
+		d = append(d,
+			dimension{"FillShare", ratioStep, n.FillShare, func(x float64) Absorber { n := n; n.FillShare = x; return n }},
+			dimension{"FillFlow", flowStep, n.FillFlow, func(x float64) Absorber { n := n; n.FillFlow = x; return n }})
+	}
+	return d
+}
+
+// refilled has nothing to keep full.
+func (n Neck) refilled(Absorber) Absorber { return n }
+
+// sized takes the unit's size for the front where none is given.
+func (n Neck) sized(size [2]float64) Absorber {
+	if n.Front == [2]float64{} {
+		n.Front = size
+	}
+	return n
+}
+
+// widestMouth is the a/R_c up to which the inner end correction holds.
+const widestMouth = 0.4
+
+// lumpedShare is the share of a wave that a part may span and still be taken as
+// lumped: a twelfth, at which tan(kl) exceeds kl by a tenth.
+const lumpedShare = 1.0 / 12
+
+// warnings says where the lumped model is uncertain.
+func (n Neck) warnings(air acoustics.Air, o *acoustics.Oscillator) []string {
+	var w []string
+	if ratio := n.MouthRadius / n.wallRadius(); ratio > widestMouth {
+		w = append(w, fmt.Sprintf(
+			"The mouths are wide for the box's front (radius ratio %.2f, over %.1f): the inner end correction is uncertain.",
+			ratio, widestMouth))
+	}
+	if o != nil {
+		wave := air.SpeedOfSound / o.Natural
+		if n.Length > lumpedShare*wave {
+			w = append(w, "The neck is longer than a twelfth of the wave at resonance: taking its air as one plug overstates the frequency.")
+		}
+		if d := n.Cavity / (n.Front[0] * n.Front[1]); max(d, n.Front[0], n.Front[1]) > wave/4 {
+			w = append(w, "The box is larger than a quarter of the wave at resonance: taking its air as one spring is uncertain.")
+		}
+	}
+	if n.FillShare > 0 {
+		w = append(w, mikiWarnings("The fill", n.FillFlow, o)...)
+	}
+	return w
+}
+
+// whole makes a unit its mouths, which act as one opening.
+func (n Neck) whole(p acoustics.Patch) (acoustics.Patch, bool) {
+	p.MouthRadius, p.Mouths = n.MouthRadius, n.Mouths
+	return p, true
 }

@@ -1,6 +1,7 @@
 package resonators
 
 import (
+	"fmt"
 	"math"
 
 	"stillroom/acoustics"
@@ -73,3 +74,85 @@ func (p Panel) Specific(omega complex128, air acoustics.Air) complex128 {
 func (p Panel) InRoom(omega complex128, area float64, air acoustics.Air) complex128 {
 	return faceInRoom(p, omega, area, air)
 }
+
+// Validate returns nil, or all *ValueError of the panel joined.
+func (p Panel) Validate() error {
+	c := checker{kind: p.Kind()}
+	c.positive("Mass", p.Mass, "kg/m²")
+	c.notNegative("Youngs", p.Youngs, "Pa")
+	if p.Youngs > 0 {
+		c.positive("Thickness", p.Thickness, metres)
+		c.positive("Size[0]", p.Size[0], metres)
+		c.positive("Size[1]", p.Size[1], metres)
+	}
+	c.need(p.Poisson >= 0 && p.Poisson <= 0.5, "Poisson", p.Poisson, "", "between 0 and 0.5")
+	c.notNegative("LossFactor", p.LossFactor, "")
+	c.positive("Cavity", p.Cavity, metres)
+	c.notNegative("Edge", p.Edge, rayls)
+	c.fill(p.Fill, p.Cavity)
+	return c.result()
+}
+
+// dimensions lists what the resonance depends on.
+func (p Panel) dimensions() []dimension {
+	d := []dimension{
+		{"Mass", massStep, p.Mass, func(x float64) Absorber { p := p; p.Mass = x; return p }},
+		{"Cavity", millimetre, p.Cavity, func(x float64) Absorber { p := p; p.Cavity = x; return p }},
+		{"Edge", edgeStep, p.Edge, func(x float64) Absorber { p := p; p.Edge = x; return p }},
+	}
+	if p.Youngs > 0 {
+		d = append(d,
+			dimension{"Thickness", tenthMM, p.Thickness, func(x float64) Absorber { p := p; p.Thickness = x; return p }},
+			dimension{"Youngs", youngsStep, p.Youngs, func(x float64) Absorber { p := p; p.Youngs = x; return p }},
+			dimension{"LossFactor", ratioStep, p.LossFactor, func(x float64) Absorber { p := p; p.LossFactor = x; return p }},
+			dimension{"Size[0]", millimetre, p.Size[0], func(x float64) Absorber { p := p; p.Size[0] = x; return p }},
+			dimension{"Size[1]", millimetre, p.Size[1], func(x float64) Absorber { p := p; p.Size[1] = x; return p }})
+	}
+	return append(d, fillDimensions(p.Fill, p.Cavity, func(f *Fill) Absorber { p := p; p.Fill = f; return p })...)
+}
+
+// refilled keeps a cavity that was full full when its depth has changed.
+func (p Panel) refilled(was Absorber) Absorber {
+	p.Fill = keptFull(p.Fill, was.(Panel).Cavity, p.Cavity)
+	return p
+}
+
+// sized takes the unit's size for the sheet's where none is given.
+func (p Panel) sized(size [2]float64) Absorber {
+	if p.Size == [2]float64{} {
+		p.Size = size
+	}
+	p.Fill = p.Fill.clone()
+	return p
+}
+
+// plateClear is how far the sheet's own resonance should stay above that of its
+// mass on the air spring.
+const plateClear = 1.5
+
+// warnings says where the sheet or the fill is outside what the model means.
+func (p Panel) warnings(air acoustics.Air, o *acoustics.Oscillator) []string {
+	return append(p.stiffness(air), fillWarnings(p.Fill, o)...)
+}
+
+// stiffness says what the sheet's own bending does to the tuning.
+func (p Panel) stiffness(air acoustics.Air) []string {
+	if p.Youngs == 0 {
+		return []string{"The sheet is taken as limp: its bending stiffness is not counted."}
+	}
+	plate, spring := p.PlateHz(), p.AirSpringHz(air)
+	switch {
+	case plate >= plateClear*spring:
+		return []string{fmt.Sprintf(
+			"The sheet's own stiffness, not the air behind it, sets the resonance: the plate alone is at %.1f Hz, the mass on the air at %.1f Hz. The edge's fixing decides.",
+			plate, spring)}
+	case plate > spring:
+		return []string{fmt.Sprintf(
+			"The sheet's own plate resonance at %.1f Hz is less than 1.5 times the air-spring resonance at %.1f Hz: the edge's fixing shifts the tuning.",
+			plate, spring)}
+	}
+	return nil
+}
+
+// whole makes a unit one piece: its sheet moves as one.
+func (p Panel) whole(at acoustics.Patch) (acoustics.Patch, bool) { return at, true }

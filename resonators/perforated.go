@@ -59,3 +59,43 @@ func (p Perforated) Specific(omega complex128, air acoustics.Air) complex128 {
 func (p Perforated) InRoom(omega complex128, area float64, air acoustics.Air) complex128 {
 	return faceInRoom(p, omega, area, air)
 }
+
+// Validate returns nil, or all *ValueError of the panel joined.
+func (p Perforated) Validate() error {
+	c := checker{kind: p.Kind()}
+	c.positive("Sheet", p.Sheet, metres)
+	c.hole(p.Hole, p.Pitch)
+	c.positive("Cavity", p.Cavity, metres)
+	c.notNegative("Gauze", p.Gauze, rayls)
+	c.fill(p.Fill, p.Cavity)
+	return c.result()
+}
+
+// dimensions lists what the resonance depends on.
+func (p Perforated) dimensions() []dimension {
+	d := []dimension{
+		{"Sheet", millimetre, p.Sheet, func(x float64) Absorber { p := p; p.Sheet = x; return p }},
+		{"Hole", tenthMM, p.Hole, func(x float64) Absorber { p := p; p.Hole = x; return p }},
+		{"Pitch", millimetre, p.Pitch, func(x float64) Absorber { p := p; p.Pitch = x; return p }},
+		{"Cavity", millimetre, p.Cavity, func(x float64) Absorber { p := p; p.Cavity = x; return p }},
+		{"Gauze", edgeStep, p.Gauze, func(x float64) Absorber { p := p; p.Gauze = x; return p }},
+	}
+	return append(d, fillDimensions(p.Fill, p.Cavity, func(f *Fill) Absorber { p := p; p.Fill = f; return p })...)
+}
+
+// refilled keeps a cavity that was full full when its depth has changed.
+func (p Perforated) refilled(was Absorber) Absorber {
+	p.Fill = keptFull(p.Fill, was.(Perforated).Cavity, p.Cavity)
+	return p
+}
+
+// sized takes nothing from the unit's size.
+func (p Perforated) sized([2]float64) Absorber { p.Fill = p.Fill.clone(); return p }
+
+// warnings says where holes or fill are outside what the model means.
+func (p Perforated) warnings(_ acoustics.Air, o *acoustics.Oscillator) []string {
+	return append(crowding("holes", p.OpenShare()), fillWarnings(p.Fill, o)...)
+}
+
+// whole leaves a unit to be cut into tiles.
+func (p Perforated) whole(at acoustics.Patch) (acoustics.Patch, bool) { return at, false }

@@ -29,8 +29,7 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 	}
 	a = fitted(a, at.Size)
 	natural, _ := resonance(a, air)
-	_, isNeck := a.(Neck)
-	_, isPanel := a.(Panel)
+	_, isOne := detailsOf(a).whole(acoustics.Patch{})
 	var units []acoustics.Unit
 	for i := range at.Units {
 		centre := [2]float64{at.Centre[0] + float64(i)*at.Size[0], at.Centre[1]}
@@ -43,7 +42,7 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 				},
 				Natural: natural,
 				Owner:   owner,
-				Tile:    !isNeck && !isPanel,
+				Tile:    !isOne,
 			})
 		}
 	}
@@ -61,12 +60,9 @@ func UnitAlone(a Absorber, air acoustics.Air, at Placement) acoustics.Unit {
 
 // patches returns the pieces of one unit.
 func patches(a Absorber, whole acoustics.Patch) []acoustics.Patch {
-	switch v := a.(type) {
-	case Neck:
-		whole.MouthRadius, whole.Mouths = v.MouthRadius, v.Mouths
-		return []acoustics.Patch{whole}
-	case Panel:
-		return []acoustics.Patch{whole}
+	one, isOne := detailsOf(a).whole(whole)
+	if isOne {
+		return []acoustics.Patch{one}
 	}
 	nu, nv := tiles(whole.Size[0]), tiles(whole.Size[1])
 	side := [2]float64{whole.Size[0] / float64(nu), whole.Size[1] / float64(nv)}
@@ -89,8 +85,7 @@ func tiles(side float64) int { return max(1, int(math.Ceil(side/tileSide))) }
 // AsWhole returns all units of an absorber as the room would know them as one piston:
 // for reckoning where it resonates in its place.
 func AsWhole(a Absorber, air acoustics.Air, at Placement) acoustics.Unit {
-	switch a.(type) {
-	case Neck, Panel:
+	if _, isOne := detailsOf(a).whole(acoustics.Patch{}); isOne {
 		return UnitAlone(a, air, at)
 	}
 	row := [2]float64{at.Size[0] * float64(at.Units), at.Size[1]}

@@ -33,3 +33,33 @@ func (p Porous) Specific(omega complex128, air acoustics.Air) complex128 {
 func (p Porous) InRoom(omega complex128, area float64, air acoustics.Air) complex128 {
 	return faceInRoom(p, omega, area, air)
 }
+
+// Validate returns nil, or all *ValueError of the layer joined.
+func (p Porous) Validate() error {
+	c := checker{kind: p.Kind()}
+	c.positive("Thickness", p.Thickness, metres)
+	c.positive("FlowResistivity", p.FlowResistivity, flowUnit)
+	c.notNegative("Gap", p.Gap, metres)
+	c.jca("JCA.", p.JCA)
+	return c.result()
+}
+
+// dimensions lists none: there is no resonance to depend on them.
+func (p Porous) dimensions() []dimension { return nil }
+
+// refilled has nothing to keep full.
+func (p Porous) refilled(Absorber) Absorber { return p }
+
+// sized takes nothing from the unit's size.
+func (p Porous) sized([2]float64) Absorber { p.JCA = p.JCA.clone(); return p }
+
+// warnings says where the layer is outside what Miki's model means.
+func (p Porous) warnings(_ acoustics.Air, o *acoustics.Oscillator) []string {
+	if p.JCA != nil {
+		return nil
+	}
+	return mikiWarnings("The porous layer", p.FlowResistivity, o)
+}
+
+// whole leaves a unit to be cut into tiles.
+func (p Porous) whole(at acoustics.Patch) (acoustics.Patch, bool) { return at, false }

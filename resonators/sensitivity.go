@@ -45,73 +45,6 @@ const (
 	ratioStep  = 0.01
 )
 
-// dimensions lists what an absorber's resonance may depend on.
-func dimensions(a Absorber) []dimension {
-	switch v := a.(type) {
-	case Neck:
-		return neckDimensions(v)
-	case Panel:
-		return panelDimensions(v)
-	case Perforated:
-		d := []dimension{
-			{"Sheet", millimetre, v.Sheet, func(x float64) Absorber { v := v; v.Sheet = x; return v }},
-			{"Hole", tenthMM, v.Hole, func(x float64) Absorber { v := v; v.Hole = x; return v }},
-			{"Pitch", millimetre, v.Pitch, func(x float64) Absorber { v := v; v.Pitch = x; return v }},
-			{"Cavity", millimetre, v.Cavity, func(x float64) Absorber { v := v; v.Cavity = x; return v }},
-			{"Gauze", edgeStep, v.Gauze, func(x float64) Absorber { v := v; v.Gauze = x; return v }},
-		}
-		return append(d, fillDimensions(v.Fill, v.Cavity, func(f *Fill) Absorber { v := v; v.Fill = f; return v })...)
-	case Slotted:
-		d := []dimension{
-			{"Slat", millimetre, v.Slat, func(x float64) Absorber { v := v; v.Slat = x; return v }},
-			{"Slot", tenthMM, v.Slot, func(x float64) Absorber { v := v; v.Slot = x; return v }},
-			{"Sheet", millimetre, v.Sheet, func(x float64) Absorber { v := v; v.Sheet = x; return v }},
-			{"Cavity", millimetre, v.Cavity, func(x float64) Absorber { v := v; v.Cavity = x; return v }},
-		}
-		return append(d, fillDimensions(v.Fill, v.Cavity, func(f *Fill) Absorber { v := v; v.Fill = f; return v })...)
-	case Microperforated:
-		return []dimension{
-			{"Sheet", tenthMM, v.Sheet, func(x float64) Absorber { v := v; v.Sheet = x; return v }},
-			{"Hole", tenthMM, v.Hole, func(x float64) Absorber { v := v; v.Hole = x; return v }},
-			{"Pitch", tenthMM, v.Pitch, func(x float64) Absorber { v := v; v.Pitch = x; return v }},
-			{"Cavity", millimetre, v.Cavity, func(x float64) Absorber { v := v; v.Cavity = x; return v }},
-		}
-	}
-	return nil
-}
-
-func neckDimensions(n Neck) []dimension {
-	d := []dimension{
-		{"Volume", litre, n.Cavity, func(x float64) Absorber { n := n; n.Cavity = x; return n }},
-		{"MouthRadius", millimetre, n.MouthRadius, func(x float64) Absorber { n := n; n.MouthRadius = x; return n }},
-		{"Length", millimetre, n.Length, func(x float64) Absorber { n := n; n.Length = x; return n }},
-		{"Gauze", edgeStep, n.Gauze, func(x float64) Absorber { n := n; n.Gauze = x; return n }},
-	}
-	if n.FillShare > 0 {
-		d = append(d,
-			dimension{"FillShare", ratioStep, n.FillShare, func(x float64) Absorber { n := n; n.FillShare = x; return n }},
-			dimension{"FillFlow", flowStep, n.FillFlow, func(x float64) Absorber { n := n; n.FillFlow = x; return n }})
-	}
-	return d
-}
-
-func panelDimensions(p Panel) []dimension {
-	d := []dimension{
-		{"Mass", massStep, p.Mass, func(x float64) Absorber { p := p; p.Mass = x; return p }},
-		{"Cavity", millimetre, p.Cavity, func(x float64) Absorber { p := p; p.Cavity = x; return p }},
-		{"Edge", edgeStep, p.Edge, func(x float64) Absorber { p := p; p.Edge = x; return p }},
-	}
-	if p.Youngs > 0 {
-		d = append(d,
-			dimension{"Thickness", tenthMM, p.Thickness, func(x float64) Absorber { p := p; p.Thickness = x; return p }},
-			dimension{"Youngs", youngsStep, p.Youngs, func(x float64) Absorber { p := p; p.Youngs = x; return p }},
-			dimension{"LossFactor", ratioStep, p.LossFactor, func(x float64) Absorber { p := p; p.LossFactor = x; return p }},
-			dimension{"Size[0]", millimetre, p.Size[0], func(x float64) Absorber { p := p; p.Size[0] = x; return p }},
-			dimension{"Size[1]", millimetre, p.Size[1], func(x float64) Absorber { p := p; p.Size[1] = x; return p }})
-	}
-	return append(d, fillDimensions(p.Fill, p.Cavity, func(f *Fill) Absorber { p := p; p.Fill = f; return p })...)
-}
-
 // fillDimensions lists those of a fill in a cavity of the given depth (m). A
 // fill that takes up the whole depth has no thickness of its own.
 func fillDimensions(f *Fill, depth float64, with func(*Fill) Absorber) []dimension {
@@ -143,15 +76,15 @@ func Sensitivities(a Absorber, air acoustics.Air, size [2]float64) []Sensitivity
 		return nil
 	}
 	var out []Sensitivity
-	for _, d := range dimensions(a) {
+	for _, d := range detailsOf(a).dimensions() {
 		// A central difference; from zero, where a part is absent, one-sided.
 		h := 1e-3 * max(d.value, d.step)
 		lo, hi := d.value-h, d.value+h
 		if lo < 0 {
 			lo = d.value
 		}
-		below, okLo := EquivalentOf(followFill(d.with(lo), a), air, size)
-		above, okHi := EquivalentOf(followFill(d.with(hi), a), air, size)
+		below, okLo := EquivalentOf(detailsOf(d.with(lo)).refilled(a), air, size)
+		above, okHi := EquivalentOf(detailsOf(d.with(hi)).refilled(a), air, size)
 		if !okLo || !okHi {
 			continue
 		}
@@ -166,26 +99,13 @@ func Sensitivities(a Absorber, air acoustics.Air, size [2]float64) []Sensitivity
 	return out
 }
 
-// followFill keeps a cavity that was full full when its depth has changed.
-func followFill(changed, was Absorber) Absorber {
-	full := func(f *Fill, before, now float64) *Fill {
-		if f == nil || f.Thickness < before || before == now {
-			return f
-		}
-		c := f.clone()
-		c.Thickness = now
-		return c
+// keptFull keeps a fill that took up the whole of a cavity as thick as the cavity has
+// become.
+func keptFull(f *Fill, before, now float64) *Fill {
+	if f == nil || f.Thickness < before || before == now {
+		return f
 	}
-	switch v := changed.(type) {
-	case Panel:
-		v.Fill = full(v.Fill, was.(Panel).Cavity, v.Cavity)
-		return v
-	case Perforated:
-		v.Fill = full(v.Fill, was.(Perforated).Cavity, v.Cavity)
-		return v
-	case Slotted:
-		v.Fill = full(v.Fill, was.(Slotted).Cavity, v.Cavity)
-		return v
-	}
-	return changed
+	c := f.clone()
+	c.Thickness = now
+	return c
 }
