@@ -71,6 +71,9 @@ func (f *Field) count(ctx context.Context, e rectangle, distants []distant) (int
 	// Each edge is cut into pieces of about these lengths, rad/s, then refined: the
 	// lower edge runs close under the zeros, the right one between them.
 	lengths := [4]float64{6, 4, 12, 12}
+	for i := range lengths {
+		lengths[i] /= 1 + float64(len(f.units))/manyUnits
+	}
 	var ends [][2]complex128
 	for i, a := range corners {
 		b := corners[(i+1)%4]
@@ -87,6 +90,7 @@ func (f *Field) count(ctx context.Context, e rectangle, distants []distant) (int
 	for w := range workers {
 		group.Go(func() {
 			d := f.newFollower(distants)
+			d.springs = f.springs((e.left + e.right) / 2)
 			for i := w; i < len(ends) && ctx.Err() == nil; i += workers {
 				a, b := ends[i][0], ends[i][1]
 				turns[i] = d.turn(a, b, d.phase(a), d.phase(b), 14)
@@ -101,11 +105,13 @@ func (f *Field) count(ctx context.Context, e rectangle, distants []distant) (int
 	return n + int(math.Round(sum/(2*math.Pi))), ctx.Err()
 }
 
-// phase returns the argument of the determinant, modulo 2π.
+// phase returns the argument of the determinant, modulo 2π, times a power of ω, which has
+// no zero within: of each unit that is a spring there one more, of each that is a mass
+// one less, so that many units alike do not turn it by more than the steps can tell.
 func (w *follower) phase(omega complex128) float64 {
 	w.matrix(omega, 1, -1)
 	w.lu.factor()
-	return imag(w.lu.logDet())
+	return imag(w.lu.logDet()) + float64(w.springs)*cmplx.Phase(omega)
 }
 
 // turn returns how far the determinant's argument turns from a to b, cutting
@@ -122,6 +128,22 @@ func (w *follower) turn(a, b complex128, pa, pb float64, depth int) float64 {
 		return first + second
 	}
 	return w.turn(a, m, pa, pm, depth-1) + w.turn(m, b, pm, pb, depth-1)
+}
+
+// manyUnits is how many units make the contour's pieces half as long.
+const manyUnits = 60
+
+// springs returns how many more units are springs than masses at an angular frequency.
+func (f *Field) springs(omega float64) int {
+	n := 0
+	for _, u := range f.units {
+		if u.Natural == 0 || 2*math.Pi*u.Natural > omega {
+			n++
+		} else {
+			n--
+		}
+	}
+	return n
 }
 
 // wrap brings an angle to −π…π.

@@ -12,6 +12,8 @@ type follower struct {
 	t   *transfer
 	lu  *luMatrix
 	rhs []complex128
+	// springs is the power of ω that the determinant's phase is taken with.
+	springs int
 }
 
 func (f *Field) newFollower(distants []distant) *follower {

@@ -24,6 +24,12 @@ const tileSide = 343.0 / 250 / 6
 // one unit, its mouths as one opening at its centre; a panel is one unit whole,
 // since its sheet moves as one; every other wide kind is cut into equal tiles.
 func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoustics.Unit {
+	return PlaceCoarse(a, air, at, owner, 1)
+}
+
+// PlaceCoarse returns the units with tiles coarser by a factor on each side: for a
+// preview while something moves.
+func PlaceCoarse(a Absorber, air acoustics.Air, at Placement, owner int, coarser float64) []acoustics.Unit {
 	if at.Units < 1 {
 		panic("resonators: a placement has one unit or more")
 	}
@@ -33,7 +39,7 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 	var units []acoustics.Unit
 	for i := range at.Units {
 		centre := [2]float64{at.Centre[0] + float64(i)*at.Size[0], at.Centre[1]}
-		for _, p := range patches(a, acoustics.Patch{Surface: at.Surface, Centre: centre, Size: at.Size}) {
+		for _, p := range patches(a, acoustics.Patch{Surface: at.Surface, Centre: centre, Size: at.Size}, coarser) {
 			area := p.Size[0] * p.Size[1]
 			units = append(units, acoustics.Unit{
 				Patch: p,
@@ -53,18 +59,18 @@ func PlaceUnits(a Absorber, air acoustics.Air, at Placement, owner int) []acoust
 // it, its own resonance not looked for (Natural is 0).
 func UnitAlone(a Absorber, air acoustics.Air, at Placement) acoustics.Unit {
 	a = fitted(a, at.Size)
-	p := patches(a, acoustics.Patch{Surface: at.Surface, Centre: at.Centre, Size: at.Size})[0]
+	p := patches(a, acoustics.Patch{Surface: at.Surface, Centre: at.Centre, Size: at.Size}, 1)[0]
 	area := p.Size[0] * p.Size[1]
 	return acoustics.Unit{Patch: p, Impedance: func(omega complex128) complex128 { return a.InRoom(omega, area, air) }}
 }
 
 // patches returns the pieces of one unit.
-func patches(a Absorber, whole acoustics.Patch) []acoustics.Patch {
+func patches(a Absorber, whole acoustics.Patch, coarser float64) []acoustics.Patch {
 	one, isOne := detailsOf(a).whole(whole)
 	if isOne {
 		return []acoustics.Patch{one}
 	}
-	nu, nv := tiles(whole.Size[0]), tiles(whole.Size[1])
+	nu, nv := tiles(whole.Size[0]/coarser), tiles(whole.Size[1]/coarser)
 	side := [2]float64{whole.Size[0] / float64(nu), whole.Size[1] / float64(nv)}
 	var out []acoustics.Patch
 	for i := range nu {

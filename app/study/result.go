@@ -16,6 +16,8 @@ type Options struct {
 	Points       int     // number of log-spaced points, both ends included, default 200
 	ModesToHz    float64 // modes are listed up to here, default 200 Hz
 	Ringing      bool    // Result.Ringing is wanted
+	// Coarse takes coarser tiles where there are many: a preview while something moves.
+	Coarse bool
 	// FieldDeg is the greatest angle of incidence of the diffuse field for the
 	// absorbers' coefficients, degrees; default 90, building practice has 78.
 	FieldDeg float64

@@ -59,7 +59,7 @@ func Run(ctx context.Context, p project.Project, o Options, former *Result, prog
 	if err != nil {
 		return nil, err
 	}
-	kit := kitStage(p, shell.room.Air, o.FieldDeg, past.kit)
+	kit := kitStage(p, shell.room.Air, o.FieldDeg, o.Coarse, past.kit)
 	if err := ctx.Err(); err != nil {
 		return nil, err
 	}

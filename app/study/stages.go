@@ -109,15 +109,43 @@ type kitPart struct {
 	absorbers []project.Absorber
 	air       acoustics.Air
 	fieldDeg  float64
+	coarse    bool
 	rows      []AbsorberRow
 	units     []acoustics.Unit
 }
 
-func kitStage(p project.Project, air acoustics.Air, fieldDeg float64, past *kitPart) *kitPart {
-	if past != nil && past.air == air && past.fieldDeg == fieldDeg && reflect.DeepEqual(past.absorbers, p.Absorbers) {
+func kitStage(p project.Project, air acoustics.Air, fieldDeg float64, coarse bool, past *kitPart) *kitPart {
+	if past != nil && past.air == air && past.fieldDeg == fieldDeg && past.coarse == coarse && reflect.DeepEqual(past.absorbers, p.Absorbers) {
 		return past
 	}
-	return newKit(p, air, fieldDeg, past, true)
+	k := newKit(p, air, fieldDeg, past, true)
+	k.coarse = coarse
+	if coarse {
+		k.coarsen(p)
+	}
+	return k
+}
+
+// Previews take tiles twice as wide where there are more than many, and four times
+// where there are more than very many.
+const manyTiles, veryManyTiles = 24, 150
+
+// coarsen places the units anew, with coarser tiles where there are many.
+func (k *kitPart) coarsen(p project.Project) {
+	coarser := 1.0
+	switch n := len(k.units); {
+	case n > veryManyTiles:
+		coarser = 4
+	case n > manyTiles:
+		coarser = 2
+	default:
+		return
+	}
+	k.units = nil
+	for i, a := range p.Absorbers {
+		at := resonators.Placement{Surface: a.Surface, Centre: a.Centre, Size: a.Size, Units: a.Units}
+		k.units = append(k.units, resonators.PlaceCoarse(k.rows[i].Design, k.air, at, i, coarser)...)
+	}
 }
 
 // newKit makes the absorbers' rows and units; without reports where only the

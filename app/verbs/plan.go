@@ -37,14 +37,10 @@ type openModeJSON struct {
 	Limit number `json:"limit_s"`
 }
 
-// plan answers with absorbers for all problem modes, each mode's decay as the whole
-// plan leaves it.
-func (c *call) plan(p project.Project, as, goal string, q study.TuneRequest) error {
-	r, err := c.study(p, study.Options{Points: 200})
-	if err != nil {
-		return err
-	}
-	plan, err := study.PlanFor(context.Background(), r, study.PlanRequest{Each: q}, nil)
+// plan answers with absorbers for some modes, or for all problem modes where none is
+// named, each mode's decay as the whole plan leaves it.
+func (c *call) plan(r *study.Result, modes []int, as, goal string, q study.TuneRequest) error {
+	plan, err := study.PlanFor(context.Background(), r, study.PlanRequest{Each: q, Modes: modes}, nil)
 	if err != nil {
 		return err
 	}
@@ -68,7 +64,7 @@ func (c *call) plan(p project.Project, as, goal string, q study.TuneRequest) err
 func orderWords(o [3]int) string { return fmt.Sprintf("%d %d %d", o[0], o[1], o[2]) }
 
 func planText(c *call, out planJSON) error {
-	fmt.Fprintf(c.stdout, "A plan for all problem modes, calculated in the treated room as a whole.\n\n")
+	fmt.Fprintf(c.stdout, "A plan, calculated in the treated room as a whole.\n\n")
 	rows := [][]string{{"id", "for mode", "Hz", "before s", "after s", "limit s", "kind", "units", "where", "volume m³"}}
 	for _, x := range out.Steps {
 		rows = append(rows, []string{x.Absorber.ID, orderWords(x.Order), shown(float64(x.F), 1), shown(float64(x.Before), 2), shown(float64(x.After), 2), shown(float64(x.Limit), 2),

@@ -42,7 +42,7 @@ func verbs() []verb {
 		{"level", "level FILE [--from HZ] [--to HZ] [--points N] [--seat ID] [--as csv|json]", "level at the seat, bare and treated", runLevel},
 		{"absorbers", "absorbers FILE [--field 90|78] [--as text|csv|json]", "resonance, Q, absorption and ratings of each absorber", runAbsorbers},
 		{"check", "check FILE [--as text|csv|json]", "criteria: figure, limit, source, met or not", runCheck},
-		{"tune", "tune FILE --mode 1,0,0|problems [--kind K] [--surface S] [--depth MM] [--goal decay|level|volume] [--target S] [--units N] [--stock metric|us] [--as text|csv|json]",
+		{"tune", "tune FILE --mode 1,0,0[;2,0,0…]|problems [--kind K] [--surface S] [--depth MM] [--goal decay|level|volume] [--target S] [--units N] [--stock metric|us] [--as text|csv|json]",
 			"ranked absorbers that can be built, with their predicted effect", runTune},
 		{"sheets", "sheets FILE --out FILE.pdf [--paper a4|letter] [--units metric|us]", "the printed set", runSheets},
 		{"figure", "figure FILE --lane NAME [--hz HZ] --out FILE.png|svg|pdf", "one lane or drawing as a picture", runFigure},

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -89,10 +90,14 @@ func runTune(c *call) error {
 		return err
 	}
 	q := study.TuneRequest{DepthM: *depth / 1000, TargetS: *target, MostUnits: *most, System: *stock, Goal: goals()[*goal]}
-	var order [3]int
+	var orders [][3]int
 	if *mode != allProblems {
-		if order, err = orderOf(*mode); err != nil {
-			return err
+		for _, one := range strings.Split(*mode, ";") {
+			order, err := orderOf(one)
+			if err != nil {
+				return err
+			}
+			orders = append(orders, order)
 		}
 	}
 	if err := oneOf("goal", *goal, "decay", "level", "volume"); err != nil {
@@ -122,14 +127,14 @@ func runTune(c *call) error {
 	case c.isSet("units") && (*most < 1 || *most > 60):
 		return wrongf("--units must be between 1 and 60, is %d", *most)
 	}
-	if *mode == allProblems {
-		return c.plan(p, as, *goal, q)
-	}
-	r, index, err := c.studyOf(p, order)
+	r, index, err := c.studyOf(p, orders)
 	if err != nil {
 		return err
 	}
-	q.Mode = index
+	if len(orders) != 1 {
+		return c.plan(r, index, as, *goal, q)
+	}
+	q.Mode = index[0]
 	found, err := study.Tune(context.Background(), r, q, nil)
 	if err != nil {
 		return err
@@ -143,12 +148,12 @@ func orderOf(text string) ([3]int, error) {
 	var order [3]int
 	parts := strings.Split(text, ",")
 	if len(parts) != 3 {
-		return order, wrongf("--mode must be three whole numbers such as 1,0,0, or problems, is %q", text)
+		return order, wrongf("--mode must be three whole numbers such as 1,0,0, several of them with ; between, or problems, is %q", text)
 	}
 	for i, p := range parts {
 		n, err := strconv.Atoi(strings.TrimSpace(p))
 		if err != nil || n < 0 || n > 1000 {
-			return order, wrongf("--mode must be three whole numbers such as 1,0,0, or problems, is %q", text)
+			return order, wrongf("--mode must be three whole numbers such as 1,0,0, several of them with ; between, or problems, is %q", text)
 		}
 		order[i] = n
 	}
@@ -158,18 +163,21 @@ func orderOf(text string) ([3]int, error) {
 	return order, nil
 }
 
-// studyOf studies a project as far as a mode needs it, and finds the mode.
-func (c *call) studyOf(p project.Project, order [3]int) (*study.Result, int, error) {
+// studyOf studies a project as far as modes need it, and finds them.
+func (c *call) studyOf(p project.Project, orders [][3]int) (*study.Result, []int, error) {
 	r, err := c.study(p, study.Options{Points: 200})
 	if err != nil {
-		return nil, 0, err
+		return nil, nil, err
 	}
-	for i, m := range r.Modes {
-		if m.Mode.Order == order {
-			return r, i, nil
+	var list []int
+	for _, order := range orders {
+		at := slices.IndexFunc(r.Modes, func(m study.ModeRow) bool { return m.Mode.Order == order })
+		if at < 0 {
+			return nil, nil, wrongf("--mode %d,%d,%d is not among the modes up to %.0f Hz", order[0], order[1], order[2], r.Options.ModesToHz)
 		}
+		list = append(list, at)
 	}
-	return nil, 0, wrongf("--mode %d,%d,%d is not among the modes up to %.0f Hz", order[0], order[1], order[2], r.Options.ModesToHz)
+	return r, list, nil
 }
 
 func tuneOf(r *study.Result, q study.TuneRequest, goal string, found []study.Proposal) tuneJSON {

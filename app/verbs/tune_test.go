@@ -105,11 +105,11 @@ func TestTuneRepeats(t *testing.T) {
 	}
 }
 
-// A plan for all problem modes says for each absorber what it is for, and what stays
+// A plan for several modes says for each absorber what it is for, and what stays
 // open.
 func TestTunePlan(t *testing.T) {
 	file := sampleFile(t, "vocal-booth")
-	status, out, errs := run(t, "", "tune", file, "--mode", "problems", "--kind", "porous", "--depth", "120", "--as", "json")
+	status, out, errs := run(t, "", "tune", file, "--mode", "0,2,0;0,1,0", "--kind", "neck", "--surface", "back", "--units", "2", "--as", "json")
 	if status != 0 || errs != "" {
 		t.Fatalf("status %d, %s", status, errs)
 	}

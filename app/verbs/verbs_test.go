@@ -270,7 +270,7 @@ func TestWrongCalls(t *testing.T) {
 		{"absorbers", file, "--as", "yaml"}, {"check"}, {"check", file, "--as", "xml"}, {"sheets", file}, {"sheets", file, "--out", "a.doc"}, {"figure", file, "--lane", "modes"},
 		{"figure", file, "--lane", "sky", "--out", "a.png"}, {"figure", file, "--lane", "modes", "--out", "a.gif"}, {"sample", "ballroom"}, {"sample", "a", "b"},
 		{"absorbers", file, "--field", "45"}, {"figure", file, "--lane", "level", "--hz", "50", "--out", "a.png"}, {"figure", file, "--lane", "plan", "--hz", "5000", "--out", "a.png"},
-		{"tune", file}, {"tune", file, "--mode", "1,0"}, {"tune", file, "--mode", "0,0,0"}, {"tune", file, "--mode", "1,0,-1"}, {"tune", file, "--mode", "90,0,0"},
+		{"tune", file}, {"tune", file, "--mode", "1,0"}, {"tune", file, "--mode", "0,0,0"}, {"tune", file, "--mode", "1,0,0;x"}, {"tune", file, "--mode", "1,0,-1"}, {"tune", file, "--mode", "90,0,0"},
 		{"tune", file, "--mode", "1,0,0", "--kind", "bottle"}, {"tune", file, "--mode", "1,0,0", "--surface", "door"}, {"tune", file, "--mode", "1,0,0", "--goal", "beauty"},
 		{"tune", file, "--mode", "1,0,0", "--depth", "5"}, {"tune", file, "--mode", "1,0,0", "--target", "0"}, {"tune", file, "--mode", "1,0,0", "--units", "0"},
 	} {

@@ -294,9 +294,7 @@ func (c *controller) dragging(on bool) {
 	c.state.Dragging = on
 	if !on {
 		c.keep()
-		if c.state.Map || c.state.Off {
-			c.study() // in full
-		}
+		c.study() // in full, not as previewed
 	}
 }
 

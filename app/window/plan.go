@@ -3,6 +3,7 @@ package window
 import (
 	"context"
 	"fmt"
+	"slices"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -23,6 +24,7 @@ type planner struct {
 	ask       wishes
 	absorbers *pathEntry
 	upTo      *pathEntry
+	these     *pathEntry
 	list      *schedule
 	say       *widget.Label
 	stop      *widget.Button
@@ -42,8 +44,10 @@ func (c *controller) planAll() {
 	t.ask = newWishes(c.state, "")
 	t.absorbers = newPathEntry("8", nil, nil)
 	t.upTo = newPathEntry("120 Hz", nil, nil)
+	t.these = newPathEntry("", nil, nil)
+	t.these.SetPlaceHolder("such as 1,0,0 2,0,0")
 	t.ask.each(t.search, func() { t.close() })
-	for _, e := range []*pathEntry{t.absorbers, t.upTo} {
+	for _, e := range []*pathEntry{t.absorbers, t.upTo, t.these} {
 		e.OnSubmitted, e.escape = func(string) { t.search() }, func() { t.close() }
 	}
 	t.stop = widget.NewButton("Stop", t.halt)
@@ -51,7 +55,8 @@ func (c *controller) planAll() {
 	sized := func(e fyne.CanvasObject, w float32) fyne.CanvasObject {
 		return container.NewGridWrap(fyne.NewSize(w, 30), e)
 	}
-	budget := container.NewHBox(widget.NewLabel("Absorbers at most"), sized(t.absorbers, 44), widget.NewLabel("Modes up to"), sized(t.upTo, 80),
+	budget := container.NewHBox(widget.NewLabel("Absorbers at most"), sized(t.absorbers, 44), widget.NewLabel("Problem modes up to"), sized(t.upTo, 80),
+		widget.NewLabel("or these"), sized(t.these, 220),
 		widget.NewButton("Plan", t.search), t.stop)
 	body := container.NewBorder(container.NewVBox(t.ask.form(false), budget, t.say), nil, nil, nil, t.list)
 	t.hide = c.ask("Plan for all problem modes", body, fyne.NewSize(1130, 600), nil,
@@ -73,15 +78,31 @@ func (t *planner) close() {
 	t.hide()
 }
 
-// wanted lists the problem modes up to a frequency.
-func (t *planner) wanted(hz float64) []int {
+// wanted lists the modes that are named, or else the problem modes up to a frequency.
+func (t *planner) wanted(hz float64) ([]int, error) {
 	var list []int
+	for name := range strings.FieldsSeq(t.these.Text) {
+		at := slices.IndexFunc(t.c.state.Result.Modes, func(m study.ModeRow) bool {
+			o := m.Mode.Order
+			return strings.Trim(name, "();") == fmt.Sprintf("%d,%d,%d", o[0], o[1], o[2])
+		})
+		if at < 0 {
+			return nil, fmt.Errorf("%q is no mode up to 250 Hz: write each as 1,0,0", name)
+		}
+		list = append(list, at)
+	}
+	if len(list) > 0 {
+		return list, nil
+	}
 	for i, m := range t.c.state.Result.Modes {
 		if m.Problem && m.Mode.Hz <= hz {
 			list = append(list, i)
 		}
 	}
-	return list
+	if len(list) == 0 {
+		return nil, fmt.Errorf("no mode up to there is a problem")
+	}
+	return list, nil
 }
 
 // search plans in the background.
@@ -105,11 +126,12 @@ func (t *planner) search() {
 	if r == nil {
 		return
 	}
-	q := study.PlanRequest{Each: each, Absorbers: int(most), Modes: t.wanted(hz)}
-	if len(q.Modes) == 0 {
-		t.say.SetText("No mode up to there is a problem.")
+	modes, err := t.wanted(hz)
+	if err != nil {
+		t.say.SetText(err.Error())
 		return
 	}
+	q := study.PlanRequest{Each: each, Absorbers: int(most), Modes: modes}
 	ctx, cancel := context.WithCancel(t.c.ctx)
 	t.cancel = cancel
 	t.stop.Enable()

@@ -83,7 +83,7 @@ func (s State) options() study.Options {
 		o.Samples = offSamples
 	}
 	if s.Dragging {
-		o.MapCells = dragCells
+		o.MapCells, o.Coarse = dragCells, true
 	}
 	return o
 }
