@@ -3,8 +3,6 @@ package figures
 import (
 	"fmt"
 	"math"
-	"strconv"
-	"strings"
 
 	"stillroom/app/project"
 	"stillroom/app/study"
@@ -239,21 +237,5 @@ func porousBuild(p project.Porous, sys units.System) build {
 	return b
 }
 
-// small writes a length in mm like [units.Small], and where that would round
-// away what matters, a thin sheet or a fine hole, with more decimals.
-func small(mm float64, sys units.System) string {
-	text := units.Small(mm/1000, sys)
-	tolerance, unit, places, suffix := 0.005, 1.0, 2, " mm"
-	if sys == units.US {
-		// A tenth off is what a sixteenth may make of a sheet's nominal thickness.
-		tolerance, unit, places, suffix = 0.1, 1000*units.Inch, 3, "″"
-	}
-	if back, err := units.ParseLength(text, sys, true); err == nil && math.Abs(back*1000-mm) <= tolerance*mm {
-		return text
-	}
-	s := strconv.FormatFloat(mm/unit, 'f', places, 64)
-	if strings.Contains(s, ".") {
-		s = strings.TrimRight(strings.TrimRight(s, "0"), ".")
-	}
-	return s + suffix
-}
+// small writes a length in mm.
+func small(mm float64, sys units.System) string { return units.Small(mm/1000, sys) }

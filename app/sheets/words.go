@@ -71,7 +71,7 @@ func Dimensions(a project.Absorber, s units.System) []string {
 		fill(p.Fill)
 	case a.Microperforated != nil:
 		p := a.Microperforated
-		add(mm("sheet", p.PanelMM), fmt.Sprintf("holes %.2f mm", p.HoleMM), fmt.Sprintf("square pitch %.2f mm", p.PitchMM), mm("cavity", p.CavityMM)+partition(p.Partitioned))
+		add(mm("sheet", p.PanelMM), mm("holes", p.HoleMM), mm("square pitch", p.PitchMM), mm("cavity", p.CavityMM)+partition(p.Partitioned))
 	case a.Porous != nil:
 		add(mm("layer", a.Porous.ThicknessMM), flow(a.Porous.FlowPaSM2))
 		if a.Porous.GapMM > 0 {

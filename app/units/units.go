@@ -37,12 +37,24 @@ func Length(m float64, s System) string {
 	return decimal(m, 2) + " m"
 }
 
-// Small writes a small length in metres: "50 mm" or inches with sixteenths.
+// How far the short form of a small length may be off before it is written with more
+// decimals: a sixteenth may make a tenth of a sheet's nominal thickness.
+const (
+	fineMetric = 0.005
+	fineInches = 0.1
+)
+
+// Small writes a small length in metres: "50 mm" or inches with sixteenths; a thin sheet
+// or a fine hole, which that would round away, with more decimals.
 func Small(m float64, s System) string {
+	text, share, unit, places, suffix := trimmed(m*1000, 1)+" mm", fineMetric, 0.001, 2, " mm"
 	if s == US {
-		return inches(m)
+		text, share, unit, places, suffix = inches(m), fineInches, Inch, 3, "″"
 	}
-	return trimmed(m*1000, 1) + " mm"
+	if back, err := ParseLength(text, s, true); err == nil && math.Abs(back-m) <= share*math.Abs(m) {
+		return text
+	}
+	return trimmed(m/unit, places) + suffix
 }
 
 // Area writes an area in m².

@@ -98,3 +98,25 @@ func FuzzParseLength(f *testing.F) {
 		}
 	})
 }
+
+// What the short form would round away keeps its figures, and reads back.
+func TestFineLengths(t *testing.T) {
+	for _, c := range []struct {
+		m          float64
+		metric, us string
+	}{
+		{0.0005, "0.5 mm", "0.02″"}, {0.00025, "0.25 mm", "0.01″"}, {0.006, "6 mm", "1/4″"}, {0.0008, "0.8 mm", "0.031″"}, {0.05, "50 mm", "1 15/16″"}, {0, "0 mm", "0″"},
+	} {
+		if got := Small(c.m, Metric); got != c.metric {
+			t.Errorf("%g m: %q, want %q", c.m, got, c.metric)
+		}
+		if got := Small(c.m, US); got != c.us {
+			t.Errorf("%g m: %q, want %q", c.m, got, c.us)
+		}
+		for _, s := range []System{Metric, US} {
+			if back, err := ParseLength(Small(c.m, s), s, true); err != nil || math.Abs(back-c.m) > 0.1*c.m {
+				t.Errorf("%q reads back as %g m, %v", Small(c.m, s), back, err)
+			}
+		}
+	}
+}
