@@ -40,6 +40,7 @@ func (c *controller) commands() []command {
 			run: func() { c.tune(c.state.Selection.Mode) }},
 		{menu: "Mode", label: "Plan for all problem modes…", key: fyne.KeyG, enabled: func() bool { return c.state.Result != nil && c.state.Result.Stage == study.StageTreated }, run: c.planAll},
 		{menu: "Mode", label: "Next problem", key: fyne.KeyP, enabled: func() bool { return c.state.Result != nil }, run: func() { c.finding(1) }},
+		{menu: "Mode", label: "Stop calculating", key: fyne.KeyPeriod, enabled: func() bool { return c.state.Busy }, run: c.stopStudy},
 		{menu: "View", label: "Details", key: fyne.KeyD, enabled: always, run: c.foldDetails},
 		{menu: "View", label: "Night", key: fyne.KeyL, enabled: always, run: c.switchDark},
 		{menu: "View", label: "Feet and inches", key: fyne.KeyU, enabled: always, run: c.switchUnits},

@@ -11,6 +11,7 @@ import (
 	"stillroom/acoustics"
 	"stillroom/app/figures"
 	"stillroom/app/project"
+	"stillroom/app/study"
 )
 
 // The ringing is calculated when its lane is folded out, by its heading.
@@ -53,4 +54,24 @@ func TestMapFollows(t *testing.T) {
 	h.until("the map is sharp", func() bool { return h.state.Result.Plan.Columns == fine })
 	h.switchMap()
 	h.until("the map is gone", func() bool { return h.state.Result.Plan == nil })
+}
+
+// A long study is stopped by its command: what there is stays, and an edit begins anew.
+func TestStudyIsStopped(t *testing.T) {
+	h := open(t)
+	p := h.history.Current()
+	// A wide absorber that resonates takes seconds up to 250 Hz.
+	a := project.Absorber{ID: "W", Surface: acoustics.Ceiling, Centre: [2]float64{1.9, 1.9}, Size: [2]float64{2.4, 2.4}, Units: 1}.OfKind("perforated")
+	h.edit("a wide absorber", p.AddAbsorber(a), "", true)
+	h.until("the levels are there", func() bool { return len(h.state.Result.Absorbers) == 3 && h.state.Busy })
+	if h.state.Result.Stage == study.StageTreated {
+		t.Skip("this machine is too quick to be stopped")
+	}
+	h.run("Stop calculating")
+	h.until("it rests", func() bool { return !h.state.Busy })
+	if h.state.Result.Stage == study.StageTreated {
+		t.Error("it went on to the end")
+	}
+	h.run("Undo")
+	h.settle()
 }

@@ -31,8 +31,8 @@ type runner struct {
 	// former is the furthest result there is, whose stages the next run takes up.
 	// The worker's own.
 	former *study.Result
-	// least is the shortest complete run of the document, 0 for none: what it
-	// takes while nothing else is at work. The worker's own.
+	// least is the shortest complete run since one was not quick, 0 for none: what it
+	// takes while nothing else is at work.
 	least time.Duration
 }
 
@@ -105,29 +105,60 @@ func (r *runner) work() {
 func (r *runner) run(ctx context.Context, q request, former *study.Result) *study.Result {
 	start := time.Now()
 	cold := former == nil
+	r.mutex.Lock()
 	whole := !cold && r.least > 0 && r.least < quick
-	result, err := study.Run(ctx, q.project, q.options, former, func(partial *study.Result) {
-		former = partial
-		if whole {
-			return
-		}
-		r.do(func() { r.show(partial, nil) })
+	r.mutex.Unlock()
+	var (
+		finished bool
+		shown    study.Stage
+	)
+	// partly shows what there is of a run that goes on, nothing that is older than what
+	// has been shown.
+	partly := func(partial *study.Result) {
 		r.mutex.Lock()
 		defer r.mutex.Unlock()
+		if finished || partial.Stage < shown {
+			return
+		}
+		shown = partial.Stage
+		r.do(func() { r.show(partial, nil) })
 		r.levels = true
 		if r.next != nil {
 			r.cancel()
 		}
+	}
+	result, err := study.Run(ctx, q.project, q.options, former, func(partial *study.Result) {
+		former = partial
+		if !whole {
+			partly(partial)
+			return
+		}
+		// Taken to be quick: only if it is not, its parts are shown, and those of the
+		// next ones at once.
+		whole = false
+		time.AfterFunc(quick-time.Since(start), func() {
+			r.mutex.Lock()
+			if !finished {
+				r.least = 0
+			}
+			r.mutex.Unlock()
+			partly(partial)
+		})
 	})
+	r.mutex.Lock()
+	finished = true
+	r.mutex.Unlock()
 	switch {
 	case err == nil:
 		took := time.Since(start)
 		if cold {
 			took /= 4 // about what the parts are worth that later runs take over
 		}
+		r.mutex.Lock()
 		if r.least == 0 || took < r.least {
 			r.least = took
 		}
+		r.mutex.Unlock()
 		r.do(func() { r.show(result, nil) })
 		return result
 	case ctx.Err() == nil:

@@ -21,6 +21,14 @@ func (c *controller) keepCurve(absorber int) {
 	c.lanes.show(c.state)
 }
 
+// stopStudy ends a study that runs; what it has shown stays, and the next edit begins
+// another.
+func (c *controller) stopStudy() {
+	c.runner.stop()
+	c.say("Stopped. The next edit calculates again.")
+	c.log("study stopped")
+}
+
 // switchTolerances shows what building tolerances and temperature make of the treated
 // room, or not.
 func (c *controller) switchTolerances() {
