@@ -172,11 +172,18 @@ func (p *sheetPen) linings(round [4]acoustics.Surface, taken vg.Length) {
 	faint := mix(p.s.Paper, p.s.Ink, 0.6)
 	small := p.s.Text * 0.85
 	wide, high := x1-x0, y1-y0
-	p.upright(x0-12*px, (y0+y1)/2, p.fitted(liningWords(p.r.Project, round[0]), small, high), small, faint)
-	p.upright(x1+11*px, (y0+y1)/2, p.fitted(liningWords(p.r.Project, round[1]), small, high), small, faint)
-	p.text((x0+x1)/2, y0-11*px, p.fitted(liningWords(p.r.Project, round[2]), small, wide), small, atMiddle, faint)
+	var words [4]string
+	for k, s := range round {
+		words[k] = s.String()
+		if p.v.PlanAt == nil { // held while something is dragged: names alone are quicker
+			words[k] = liningWords(p.r.Project, s)
+		}
+	}
+	p.upright(x0-12*px, (y0+y1)/2, p.fitted(words[0], small, high), small, faint)
+	p.upright(x1+11*px, (y0+y1)/2, p.fitted(words[1], small, high), small, faint)
+	p.text((x0+x1)/2, y0-11*px, p.fitted(words[2], small, wide), small, atMiddle, faint)
 	// The upper edge shares its line with the title where the room fills the sheet.
-	name, x := p.fitted(liningWords(p.r.Project, round[3]), small, wide), (x0+x1)/2
+	name, x := p.fitted(words[3], small, wide), (x0+x1)/2
 	if y := y1 + 11*px; y+small/2 > p.height()-16*px {
 		name = p.fitted(name, small, x1-max(x0, taken+12*px))
 		x = max(x, taken+12*px+p.measure(name, small)/2)

@@ -3,6 +3,7 @@ package figures
 import (
 	"image/color"
 	"math"
+	"sort"
 	"strings"
 	"sync"
 
@@ -179,10 +180,12 @@ func (p pen) fitted(s string, size, room vg.Length) string {
 	if p.measure(s, size) <= room {
 		return s
 	}
-	for runes := []rune(s); len(runes) > 3; runes = runes[:len(runes)-1] {
-		if cut := strings.TrimRight(string(runes), " ,:") + "…"; p.measure(cut, size) <= room {
-			return cut
-		}
+	runes := []rune(s)
+	cut := func(n int) string { return strings.TrimRight(string(runes[:n]), " ,:") + "…" }
+	// The first length that is too long: those below it fit.
+	n := sort.Search(len(runes), func(n int) bool { return p.measure(cut(n), size) > room })
+	if n > 4 {
+		return cut(n - 1)
 	}
 	return ""
 }
