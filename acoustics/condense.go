@@ -16,7 +16,7 @@ import (
 // patterns cost.
 const (
 	// fewTiles is how many tiles of an absorber are still taken one by one.
-	fewTiles = 16
+	fewTiles = 6
 	// patternsAbove is how far above the field's limit modes shape the patterns, as a
 	// factor, and patternShare the relative amplitude below which a pattern counts as
 	// having no part in them. Both are tested against all tiles taken one by one.

@@ -40,12 +40,13 @@ func ringing(hz, q float64) func(complex128) complex128 {
 func TestPatternsAgainstTiles(t *testing.T) {
 	r := studio(t)
 	for name, c := range map[string]struct {
+		n        int
 		specific func(complex128) complex128
 		natural  float64
-	}{"wool": {woolly, 0}, "resonant": {ringing(58, 12), 58}} {
-		whole := studioField(t, tiled(7, c.specific, c.natural, r.Air, false))
-		short := studioField(t, tiled(7, c.specific, c.natural, r.Air, true))
-		if len(whole.units) != 49 || len(short.units) >= 40 {
+	}{"wool": {7, woolly, 0}, "resonant": {7, ringing(58, 12), 58}, "a little wool": {3, woolly, 0}, "a small resonant": {3, ringing(58, 12), 58}} {
+		whole := studioField(t, tiled(c.n, c.specific, c.natural, r.Air, false))
+		short := studioField(t, tiled(c.n, c.specific, c.natural, r.Air, true))
+		if len(whole.units) != c.n*c.n || len(short.units) > len(whole.units) || c.n > 5 && 2*len(short.units) > len(whole.units) {
 			t.Errorf("%s: %d tiles, %d patterns", name, len(whole.units), len(short.units))
 		}
 		hz := logSpaced(20, 250, 90)

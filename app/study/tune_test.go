@@ -336,3 +336,28 @@ func BenchmarkTiledDrag(b *testing.B) {
 		})
 	}
 }
+
+// BenchmarkOneOfTwenty is what changing a dimension of one of twenty absorbers asks for,
+// as far as the levels.
+func BenchmarkOneOfTwenty(b *testing.B) {
+	p := testcase.Sample(b, "edit-suite")
+	p.Absorbers = nil
+	for i := range 20 {
+		a := project.Absorber{ID: p.FreshAbsorberID(), Surface: acoustics.Ceiling, Size: [2]float64{0.5, 0.5}, Units: 1,
+			Centre: [2]float64{0.3 + 0.5*float64(i%8), 0.3 + 0.6*float64(i/8)}}.OfKind([]string{"neck", "panel", "perforated"}[i%3])
+		p = p.AddAbsorber(a)
+	}
+	o := Options{Points: 400, ModesToHz: 250}
+	levels := func(q project.Project, former *Result) (last *Result) {
+		ctx, cancel := context.WithCancel(context.Background())
+		defer cancel()
+		Run(ctx, q, o, former, func(r *Result) { last = r; cancel() })
+		return last
+	}
+	r := levels(p, nil)
+	for i := 0; b.Loop(); i++ {
+		q := p.Clone()
+		q.Absorbers[1].Panel.CavityMM = 80 + float64(i%40)
+		r = levels(q, r)
+	}
+}
