@@ -4,6 +4,7 @@ import (
 	"context"
 	"math"
 	"math/rand/v2"
+	"slices"
 
 	"stillroom/app/project"
 )
@@ -11,7 +12,8 @@ import (
 // Robustness is what building tolerances and the air's temperature make of the treated
 // room: the range over many rooms whose dimensions are off at random.
 type Robustness struct {
-	Samples int
+	// Samples is how many rooms it holds so far, of Wanted.
+	Samples, Wanted int
 	// Lowest and Highest are the treated levels, dB, indexed [seat][frequency of
 	// Result.Levels].
 	Lowest, Highest [][]float64
@@ -40,47 +42,62 @@ const (
 // seedOfTolerances makes the samples the same each time.
 const seedOfTolerances = 20_260_101
 
-// robust samples the treated room. Where it is stopped it returns the error of ctx.
-func (r *Result) robust(ctx context.Context, samples int) (*Robustness, error) {
+// robust samples the treated room, with coarse tiles where there are many, and takes
+// over what each sample changes of the room as it is. Each is given the range so far.
+// Where it is stopped it returns the error of ctx.
+func (r *Result) robust(ctx context.Context, samples int, each func(*Robustness)) (*Robustness, error) {
 	source := rand.New(rand.NewPCG(seedOfTolerances, uint64(samples)))
-	g := &Robustness{Samples: samples, T60: make([][2]float64, len(r.Modes))}
+	g := &Robustness{Wanted: samples, T60: make([][2]float64, len(r.Modes))}
 	for _, seat := range r.Levels.Treated {
-		g.Lowest = append(g.Lowest, append([]float64(nil), seat...))
-		g.Highest = append(g.Highest, append([]float64(nil), seat...))
+		g.Lowest, g.Highest = append(g.Lowest, slices.Clone(seat)), append(g.Highest, slices.Clone(seat))
 	}
 	for i, m := range r.Modes {
 		g.T60[i] = [2]float64{m.LongestTreated(), m.LongestTreated()}
 	}
 	o := r.Options
-	o.Ringing, o.MapHz, o.Samples = false, 0, 0
+	o.Ringing, o.MapHz, o.Samples, o.Coarse = false, 0, 0, true
+	base, err := Run(ctx, r.Project, o, nil, nil)
+	if err != nil {
+		return nil, err
+	}
 	for range samples {
-		p := offAtRandom(r.Project, source)
-		s, err := Run(ctx, p, o, nil, nil)
+		s, err := Run(ctx, offAtRandom(r.Project, source), o, nil, nil)
 		if err != nil {
 			return nil, err
 		}
-		g.take(r, s)
+		g = g.with(r, base, s)
+		each(g)
 	}
 	return g, nil
 }
 
-// take widens the ranges by one sample.
-func (g *Robustness) take(r, s *Result) {
+// with returns the ranges widened by one sample s of the room r, of which base is what
+// the sample is compared with.
+func (g *Robustness) with(r, base, s *Result) *Robustness {
+	w := &Robustness{Samples: g.Samples + 1, Wanted: g.Wanted, T60: slices.Clone(g.T60)}
 	for seat := range g.Lowest {
-		for i, v := range s.Levels.Treated[seat] {
-			g.Lowest[seat][i] = math.Min(g.Lowest[seat][i], v)
-			g.Highest[seat][i] = math.Max(g.Highest[seat][i], v)
+		lowest, highest := slices.Clone(g.Lowest[seat]), slices.Clone(g.Highest[seat])
+		for i, v := range r.Levels.Treated[seat] {
+			v += s.Levels.Treated[seat][i] - base.Levels.Treated[seat][i]
+			lowest[i], highest[i] = math.Min(lowest[i], v), math.Max(highest[i], v)
 		}
+		w.Lowest, w.Highest = append(w.Lowest, lowest), append(w.Highest, highest)
 	}
-	byOrder := map[[3]int]float64{}
-	for _, m := range s.Modes {
-		byOrder[m.Mode.Order] = m.LongestTreated()
+	longest := func(of *Result) map[[3]int]float64 {
+		m := map[[3]int]float64{}
+		for _, x := range of.Modes {
+			m[x.Mode.Order] = x.LongestTreated()
+		}
+		return m
 	}
+	off, on := longest(s), longest(base)
 	for i, m := range r.Modes {
-		if t := byOrder[m.Mode.Order]; t > 0 && g.T60[i][0] > 0 {
-			g.T60[i] = [2]float64{math.Min(g.T60[i][0], t), math.Max(g.T60[i][1], t)}
+		if t, u := off[m.Mode.Order], on[m.Mode.Order]; t > 0 && u > 0 && w.T60[i][0] > 0 {
+			v := m.LongestTreated() * t / u
+			w.T60[i] = [2]float64{math.Min(w.T60[i][0], v), math.Max(w.T60[i][1], v)}
 		}
 	}
+	return w
 }
 
 // offAtRandom returns a project whose absorbers and air are off by their tolerances.

@@ -106,7 +106,11 @@ func (r *Result) tolerated(ctx context.Context, past *robustPart, progress func(
 	}
 	if past == nil || past.poles != r.stages.poles || past.samples != r.Options.Samples {
 		progress(r.copied())
-		g, err := r.robust(ctx, r.Options.Samples)
+		g, err := r.robust(ctx, r.Options.Samples, func(soFar *Robustness) {
+			part := r.copied()
+			part.Robustness = soFar
+			progress(part)
+		})
 		if err != nil {
 			return nil, err
 		}

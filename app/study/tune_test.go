@@ -208,7 +208,7 @@ func TestBandOfTolerances(t *testing.T) {
 		t.Fatal(err)
 	}
 	g := r.Robustness
-	if g == nil || stages != 2 {
+	if g == nil || stages != 2+6 || g.Samples != 6 {
 		t.Fatalf("robustness %v after %d partial results", g, stages)
 	}
 	wide := 0.0
@@ -289,7 +289,7 @@ func BenchmarkTolerances(b *testing.B) {
 		b.Fatal(err)
 	}
 	for b.Loop() {
-		if _, err := r.robust(context.Background(), 24); err != nil {
+		if _, err := r.robust(context.Background(), 24, func(*Robustness) {}); err != nil {
 			b.Fatal(err)
 		}
 	}

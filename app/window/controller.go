@@ -201,6 +201,10 @@ func (c *controller) result(r *study.Result, err error) {
 	} else {
 		c.refresh()
 	}
+	if g := r.Robustness; g != nil && g.Samples < g.Wanted {
+		c.working.Text = fmt.Sprintf("tolerances: room %d of %d …  ", g.Samples+1, g.Wanted)
+		c.working.Refresh()
+	}
 	c.log("result stage %d frame %d", r.Stage, c.frames)
 	c.places()
 }
