@@ -135,7 +135,7 @@ func LaneReading(lane Lane, r *study.Result, v View, hz float64) string {
 				s += "  treated " + units.Decibels(r.Levels.Treated[v.Seat][i])
 			}
 			if g := r.Robustness; g != nil {
-				s += fmt.Sprintf(" (%.1f to %.1f)", g.Lowest[v.Seat][i], g.Highest[v.Seat][i])
+				s += fmt.Sprintf(" (%s to %s)", strings.TrimSuffix(units.Decibels(g.Lowest[v.Seat][i]), " dB"), strings.TrimSuffix(units.Decibels(g.Highest[v.Seat][i]), " dB"))
 			}
 			if len(r.Levels.Treated) > 1 {
 				s += fmt.Sprintf("  all seats mean %s, %s to %s", units.Decibels(r.Levels.Mean[i]), strings.TrimSuffix(units.Decibels(r.Levels.Lowest[i]), " dB"), units.Decibels(r.Levels.Highest[i]))
