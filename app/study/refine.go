@@ -186,10 +186,10 @@ func (b *bench) worth(ctx context.Context, a project.Absorber) float64 {
 	if err != nil {
 		return math.Inf(1)
 	}
-	if after := seen.after(); len(after) > 0 {
-		return after[0].Oscillator.T60()
+	if len(seen.own) == 0 {
+		return math.Inf(1) // lost on the way: nothing is known of it
 	}
-	return 0
+	return seen.after()[0].Oscillator.T60()
 }
 
 // peak returns the highest treated level near the mode at any seat, dB.

@@ -87,11 +87,12 @@ func Tune(ctx context.Context, r *Result, q TuneRequest, progress TuneProgress) 
 	for range runtime.GOMAXPROCS(0) {
 		group.Go(func() {
 			for i := range next {
-				p, err := r.try(ctx, q, candidates[i])
+				p, known, err := r.try(ctx, q, candidates[i])
 				mutex.Lock()
-				if err != nil {
+				switch {
+				case err != nil:
 					first = cmp.Or(first, err)
-				} else {
+				case known:
 					found[i] = &p
 				}
 				done++
@@ -208,21 +209,22 @@ func (r *Result) problem(q TuneRequest) tuning.Problem {
 const around = 1.28
 
 // try refines a candidate in the room, builds it into the project and looks at what
-// becomes of the mode.
-func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Proposal, error) {
+// becomes of the mode; false where the mode's pole is lost on the way, so that nothing
+// can be said of it.
+func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Proposal, bool, error) {
 	m := r.Modes[q.Mode]
 	a := buildable(c)
 	a.ID = r.Project.FreshAbsorberID()
 	a, err := r.refined(ctx, q, a, c)
 	if err != nil {
-		return Proposal{}, err
+		return Proposal{}, false, err
 	}
 	p := Proposal{Absorber: a, Candidate: c, MinVolumeM3: c.LeastVolume, MinAreaM2: c.LeastArea, Before: m.Oscillator,
 		Spot: spot(r.Room.Box, c.At), VolumeM3: Volume(a), SheetM2: SheetArea(a), PeakBefore: r.peakNear(m.Mode.Hz)}
 	b := r.newBench(q)
 	field, err := b.place(ctx, a)
 	if err != nil {
-		return p, err
+		return p, false, err
 	}
 	design := Design(a)
 	if e, ok := resonators.EquivalentOf(design, r.Air, a.Size); ok {
@@ -233,13 +235,16 @@ func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Pr
 	}
 	seen, err := r.look(ctx, field, m.Mode.Order, m.Mode.Hz, false)
 	if err != nil {
-		return p, err
+		return p, false, err
+	}
+	if len(seen.own) == 0 {
+		return p, false, nil
 	}
 	p.After = seen.after()
 	p.Meets = p.Longest() <= r.target(q)
 	if p.PeakAfter, err = b.peak(ctx, field); err != nil {
-		return p, err
+		return p, false, err
 	}
 	p.Tolerances = tolerances(resonators.Sensitivities(design, r.Air, a.Size), p.After)
-	return p, nil
+	return p, true, nil
 }
