@@ -78,7 +78,10 @@ func bandMean(a Absorber, air acoustics.Air, limit, lo, hi float64) [2]float64 {
 		}
 		return s
 	})
-	if !local {
+	switch {
+	case !local && l.cavity().empty() && l.cavity().depth() > 0:
+		m[1] = newOpenBand(l, air, limit, lo, hi, 1).mean()
+	case !local:
 		// Resonances of the single angles have averaged out already.
 		m[1] = mean(from, to, panels, bandTolerance, func(x float64) sample {
 			omega := complex(2*math.Pi*math.Exp(x), 0)
