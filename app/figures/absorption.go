@@ -1,6 +1,7 @@
 package figures
 
 import (
+	"fmt"
 	"image/color"
 
 	"gonum.org/v1/plot/vg"
@@ -18,6 +19,10 @@ func (p lanePen) absorption() {
 		p.text((x0+x1)/2, (y0+y1)/2, "No absorbers yet", p.s.Text, atMiddle, mix(p.s.Paper, p.s.Ink, 0.6))
 	}
 	p.marks(a, []float64{0, 0.25, 0.5, 0.75, 1}, "%.2f")
+	if deg := p.r.Options.FieldDeg; deg < 90 {
+		x0, _, _, _ := p.field()
+		p.text(x0+6*px, y1-7*px, fmt.Sprintf("angles to %.0f°", deg), p.s.Text*0.92, atLeft, p.s.Ink)
+	}
 	dashes := [][]vg.Length{nil, {6 * px, 3 * px}, {2 * px, 2 * px}, {8 * px, 3 * px, 2 * px, 3 * px}}
 	var used []frame
 	for _, row := range p.v.Kept {

@@ -182,7 +182,7 @@ func (p lanePen) level() {
 		entries = append(entries, entry{name, p.s.Ink, dots})
 	}
 	if p.r.Robustness != nil {
-		entries = append(entries, entry{"tolerances", mix(p.s.Paper, p.s.Ochre, 0.3), nil})
+		entries = append(entries, entry{"tolerances", mix(p.s.Paper, p.s.Ochre, 0.34), nil})
 	}
 	p.legend(entries)
 }
@@ -191,10 +191,10 @@ func (p lanePen) level() {
 // tolerances where it is there, else that over all seats.
 func (p lanePen) spread(a scale) {
 	l := p.r.Levels
-	lowest, highest := l.Lowest, l.Highest
+	lowest, highest, depth := l.Lowest, l.Highest, 0.16
 	switch g := p.r.Robustness; {
 	case g != nil:
-		lowest, highest = g.Lowest[p.v.Seat], g.Highest[p.v.Seat]
+		lowest, highest, depth = g.Lowest[p.v.Seat], g.Highest[p.v.Seat], 0.34
 	case len(l.Treated) < 2:
 		return
 	}
@@ -203,7 +203,7 @@ func (p lanePen) spread(a scale) {
 		outline = append(outline, q)
 	}
 	if len(outline) > 2 {
-		p.polygon(mix(p.s.Paper, p.s.Ochre, 0.16), outline...)
+		p.polygon(mix(p.s.Paper, p.s.Ochre, depth), outline...)
 	}
 }
 

@@ -17,6 +17,7 @@ type command struct {
 	shift       bool
 	enabled     func() bool
 	run         func()
+	on          func() bool // of what is switched on and off; nil for others
 	// edits is true where an entry that has the focus wants the shortcut first.
 	edits func() fyne.Shortcut
 }
@@ -41,12 +42,13 @@ func (c *controller) commands() []command {
 		{menu: "Mode", label: "Plan for all problem modes…", key: fyne.KeyG, enabled: func() bool { return c.state.Result != nil && c.state.Result.Stage == study.StageTreated }, run: c.planAll},
 		{menu: "Mode", label: "Next problem", key: fyne.KeyP, enabled: func() bool { return c.state.Result != nil }, run: func() { c.finding(1) }},
 		{menu: "Mode", label: "Stop calculating", key: fyne.KeyPeriod, enabled: func() bool { return c.state.Busy }, run: c.stopStudy},
-		{menu: "View", label: "Details", key: fyne.KeyD, enabled: always, run: c.foldDetails},
-		{menu: "View", label: "Night", key: fyne.KeyL, enabled: always, run: c.switchDark},
-		{menu: "View", label: "Feet and inches", key: fyne.KeyU, enabled: always, run: c.switchUnits},
-		{menu: "View", label: "Level over the drawing", key: fyne.KeyM, enabled: func() bool { return c.state.Result != nil }, run: c.switchMap},
-		{menu: "View", label: "Band of tolerances", key: fyne.KeyB, enabled: always, run: c.switchTolerances},
-		{menu: "View", label: "Diffuse field to 78° or 90°", enabled: always, run: c.switchField},
+		{menu: "View", label: "Details", key: fyne.KeyD, enabled: always, run: c.foldDetails, on: func() bool { return c.settings.Details }},
+		{menu: "View", label: "Night", key: fyne.KeyL, enabled: always, run: c.switchDark, on: func() bool { return c.state.Dark }},
+		{menu: "View", label: "Feet and inches", key: fyne.KeyU, enabled: always, run: c.switchUnits, on: func() bool { return c.state.US }},
+		{menu: "View", label: "Level over the drawing", key: fyne.KeyM, enabled: func() bool { return c.state.Result != nil }, run: c.switchMap,
+			on: func() bool { return c.state.Map }},
+		{menu: "View", label: "Band of tolerances", key: fyne.KeyB, enabled: always, run: c.switchTolerances, on: func() bool { return c.state.Off }},
+		{menu: "View", label: "Diffuse field to 78°", enabled: always, run: c.switchField, on: func() bool { return c.state.To78 }},
 		{menu: "View", label: "Whole ruler", key: fyne.Key0, enabled: always, run: func() { c.ruler(rulerFrom, rulerTo) }},
 	}
 }
@@ -70,6 +72,9 @@ func (c *controller) guard(x command) func() {
 		}
 		if x.enabled() {
 			x.run()
+			if x.on != nil {
+				c.menus() // with its mark
+			}
 		}
 	}
 }
@@ -111,6 +116,7 @@ func (c *controller) menus() {
 			list = append(list, m)
 		}
 		item := fyne.NewMenuItem(x.label, run)
+		item.Checked = x.on != nil && x.on()
 		if x.key != "" {
 			item.Shortcut = x.shortcut()
 		}
