@@ -16,30 +16,36 @@ func (e rectangle) holds(w complex128) bool {
 	return real(w) > e.left && real(w) < e.right && imag(w) > e.low && imag(w) < e.high
 }
 
-// contour returns the rectangle that is counted in. Its right edge is moved,
-// within a hundredth, to where no known zero or pole is near.
+// contour returns the rectangle that is counted in. Its left, right and upper edges are
+// moved, within a tenth and a hundredth, to where no known zero or pole is near: two
+// zeros side by side close to an edge turn the phase by nearly a whole turn on a
+// stretch that no step would see.
 func (f *Field) contour(upTo float64, paths []path) rectangle {
-	e := rectangle{
-		left: math.Pi * f.room.lowestHz(),
-		low:  -0.05, // δ is never below 0: no zero lies near this edge
-		high: tallest,
-	}
-	best := -1.0
-	for i := range 21 {
-		right := 2 * math.Pi * upTo * (0.99 + 0.001*float64(i))
-		near := math.Inf(1)
-		for _, a := range paths {
-			if a.found {
-				near = math.Min(near, math.Abs(real(a.root)-right))
+	// δ is never below 0: no zero lies near the lower edge.
+	e := rectangle{left: math.Pi * f.room.lowestHz(), right: 2 * math.Pi * upTo, low: -0.05, high: tallest}
+	clearest := func(nominal, least, step float64, distance func(root complex128, edge float64) float64) float64 {
+		best, at := -1.0, nominal
+		for i := range 21 {
+			edge := nominal * (least + step*float64(i))
+			near := math.Inf(1)
+			for _, a := range paths {
+				if a.found {
+					near = math.Min(near, distance(a.root, edge))
+				}
+				if a.mode >= 0 {
+					near = math.Min(near, distance(f.bareRoot(a.mode), edge))
+				}
 			}
-			if a.mode >= 0 {
-				near = math.Min(near, math.Abs(real(f.bareRoot(a.mode))-right))
+			if near > best {
+				best, at = near, edge
 			}
 		}
-		if near > best {
-			best, e.right = near, right
-		}
+		return at
 	}
+	upright := func(root complex128, edge float64) float64 { return math.Abs(real(root) - edge) }
+	e.left = clearest(e.left, 0.9, 0.005, upright)
+	e.right = clearest(e.right, 0.99, 0.001, upright)
+	e.high = clearest(e.high, 1, 0.002, func(root complex128, edge float64) float64 { return math.Abs(imag(root) - edge) })
 	return e
 }
 

@@ -114,11 +114,11 @@ func (w *follower) follow(ctx context.Context, a *path) {
 		a.root, a.found = f.bareRoot(a.mode), true
 		return
 	}
-	start := complex(2*math.Pi, 0)
+	var start complex128
 	if a.mode >= 0 {
 		start = f.bareRoot(a.mode)
 	} else {
-		start *= complex(f.units[a.unit].Natural, 0)
+		start = f.unitStart(a.unit)
 	}
 	var slope complex128 // of the secular function, as last seen
 	root, ok := w.correct(a, start, 0, &slope, onTheWay)
@@ -152,6 +152,31 @@ func (w *follower) follow(ctx context.Context, a *path) {
 	}
 	end, ok := w.correct(a, root, 1, &slope, settled)
 	a.root, a.found = end, ok && real(end) > 0
+}
+
+// unitStart returns about where a unit rings with the air before it, by the oscillator
+// that its impedance is at its resonance,
+//
+//	ω = √(ω0² − δ²) + jδ, δ = R/X′
+//
+// so that a heavily damped one is found too.
+func (f *Field) unitStart(u int) complex128 {
+	const h = 1e-5 // relative
+	var (
+		unit    = f.units[u]
+		density = f.room.Air.Density
+		w0      = 2 * math.Pi * unit.Natural
+	)
+	if hz, ok := unit.resonance(f.alone(u), density); ok {
+		w0 = 2 * math.Pi * hz
+	}
+	hz := w0 / (2 * math.Pi)
+	slope := (unit.Reactance(hz*(1+h), f.alone(u), density) - unit.Reactance(hz*(1-h), f.alone(u), density)) / (2 * h * w0)
+	decay := real(unit.Impedance(complex(w0, 0))) / slope
+	if !(decay > 0 && decay < 0.95*w0) {
+		return complex(w0, 0)
+	}
+	return complex(math.Sqrt(w0*w0-decay*decay), decay)
 }
 
 // waypoint is a place that a path has come by.

@@ -28,9 +28,9 @@ type Poles struct {
 	Absorbers []AbsorberPole
 	// Counted is the number of poles the argument principle finds inside the
 	// contour, Found those that were followed there; equal when none is lost.
-	// The contour is the rectangle of Re ω/2π from half the lowest mode's
-	// frequency to the limit asked for, Im ω from just below 0 to that of
-	// T60 = 0.02 s.
+	// The contour is the rectangle of Re ω/2π from about half the lowest mode's
+	// frequency to about the limit asked for, Im ω from just below 0 to about that
+	// of T60 = 0.02 s: where between its edges and the poles there is room.
 	Counted, Found int
 }
 
