@@ -11,23 +11,19 @@ type CrossSection struct {
 	Hz      float64
 	Area    float64 // of a plane wave, m²
 	Ceiling float64 // the most that any unit there could take in, m²
+	Diffuse float64 // the most that it is worth as a Sabine area in a diffuse field, m²
 }
 
 // CrossSectionOf returns the absorption cross-section of one unit of the given
-// size (m) at its resonance, with one, two or three surfaces meeting at its place
-// (wall, edge, corner),
+// size (m) at its resonance in a place where n surfaces meet,
 //
 //	s = 4^{n−1}·4ρc·R/(R + R_r)², R_r = 2^{n−1}·ρck²/2π
-//	ceiling = 2^{n−1}·λ²/2π, reached where R = R_r
 //
-// R the unit's acoustic resistance; false where it has no resonance or its front
+// with the ceiling of [PlaneWaveCeiling], reached where R = R_r; R is the unit's acoustic resistance; false where it has no resonance or its front
 // is larger than a quarter of the wave.
 //
 // Source: Ingard, JASA 25 (1953) 1037 (wall); edge and corner by images.
-func CrossSectionOf(a Absorber, air acoustics.Air, size [2]float64, surfaces int) (CrossSection, bool) {
-	if surfaces < 1 || surfaces > 3 {
-		panic("resonators: a place lies on one to three surfaces")
-	}
+func CrossSectionOf(a Absorber, air acoustics.Air, size [2]float64, place Place) (CrossSection, bool) {
 	a = fitted(a, size)
 	hz, ok := resonance(a, air)
 	if !ok {
@@ -36,7 +32,7 @@ func CrossSectionOf(a Absorber, air acoustics.Air, size [2]float64, surfaces int
 	var (
 		c         = air.SpeedOfSound
 		wave      = c / hz
-		twice     = math.Exp2(float64(surfaces - 1))
+		twice     = math.Exp2(float64(place - InWall))
 		k         = 2 * math.Pi / wave
 		radiation = twice * air.Density * c * k * k / (2 * math.Pi)
 		loss      = real(a.InRoom(complex(2*math.Pi*hz, 0), size[0]*size[1], air))
@@ -45,5 +41,5 @@ func CrossSectionOf(a Absorber, air acoustics.Air, size [2]float64, surfaces int
 		return CrossSection{}, false
 	}
 	return CrossSection{Hz: hz, Area: sq(twice) * 4 * air.Density * c * loss / sq(loss+radiation),
-		Ceiling: twice * sq(wave) / (2 * math.Pi)}, true
+		Ceiling: PlaneWaveCeiling(place, hz, c), Diffuse: DiffuseCeiling(hz, c)}, true
 }

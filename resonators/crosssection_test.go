@@ -14,7 +14,7 @@ func TestCrossSectionMeetsItsCeiling(t *testing.T) {
 	box := Neck{Cavity: 0.03, MouthRadius: 0.06, Length: 0.02, Mouths: 1}
 	for surfaces, share := range []float64{1, 2, 4} {
 		surfaces++
-		c, ok := CrossSectionOf(box, testAir, size, surfaces)
+		c, ok := CrossSectionOf(box, testAir, size, Place(surfaces))
 		if !ok {
 			t.Fatal("no cross-section")
 		}
@@ -27,7 +27,7 @@ func TestCrossSectionMeetsItsCeiling(t *testing.T) {
 		for r := 0.0; r < 400; r += 0.2 {
 			g := box
 			g.Gauze = r / 20
-			c, _ := CrossSectionOf(g, testAir, size, surfaces)
+			c, _ := CrossSectionOf(g, testAir, size, Place(surfaces))
 			if c.Area > c.Ceiling*(1+1e-12) {
 				t.Fatalf("%d surfaces: %v m² of at most %v m²", surfaces, c.Area, c.Ceiling)
 			}
@@ -37,10 +37,23 @@ func TestCrossSectionMeetsItsCeiling(t *testing.T) {
 			t.Errorf("%d surfaces: at best %.5f of the ceiling", surfaces, best)
 		}
 	}
-	if _, ok := CrossSectionOf(Porous{Thickness: 0.1, FlowResistivity: 8000}, testAir, size, 1); ok {
+	if _, ok := CrossSectionOf(Porous{Thickness: 0.1, FlowResistivity: 8000}, testAir, size, InWall); ok {
 		t.Error("a porous layer has a resonance")
 	}
-	if _, ok := CrossSectionOf(Panel{Mass: 3, Cavity: 0.05}, testAir, [2]float64{1.2, 1.2}, 1); ok {
+	if _, ok := CrossSectionOf(Panel{Mass: 3, Cavity: 0.05}, testAir, [2]float64{1.2, 1.2}, InWall); ok {
 		t.Error("a front of half a wave counts as small")
+	}
+}
+
+// The ceilings at 100 Hz and 343 m/s: 1.872 m² in a wall, double in an edge, four
+// times in a corner; as a Sabine area 3.745 m² in every place (worked out apart).
+func TestCeilings(t *testing.T) {
+	for place, want := range map[Place]float64{InWall: 1.872, InEdge: 3.745, InCorner: 7.490} {
+		if got := PlaneWaveCeiling(place, 100, 343); math.Abs(got-want) > 1.1e-3 {
+			t.Errorf("place %d: %.4f m², want %.3f", place, got, want)
+		}
+	}
+	if got := DiffuseCeiling(100, 343); math.Abs(got-3.745) > 6e-4 {
+		t.Errorf("diffuse %.4f m², want 3.745", got)
 	}
 }

@@ -160,7 +160,7 @@ func newKit(p project.Project, air acoustics.Air, fieldDeg float64, past *kitPar
 			row.Report, row.Sensitivities, row.Section = old.Report, old.Sensitivities, old.Section
 		} else if reports {
 			row.Report = resonators.AnalyseWithin(design, air, a.Size, fieldDeg*math.Pi/180)
-			if s, ok := resonators.CrossSectionOf(design, air, a.Size, 1); ok {
+			if s, ok := resonators.CrossSectionOf(design, air, a.Size, resonators.InWall); ok {
 				row.Section = &s
 			}
 			row.Sensitivities = resonators.Sensitivities(design, air, a.Size)

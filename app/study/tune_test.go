@@ -313,6 +313,14 @@ func BenchmarkTiles(b *testing.B) {
 	}
 }
 
+// asFarAsLevels studies a project up to its levels, as a drag does.
+func asFarAsLevels(p project.Project, o Options, former *Result) (last *Result) {
+	ctx, cancel := context.WithCancel(context.Background())
+	defer cancel()
+	Run(ctx, p, o, former, func(r *Result) { last = r; cancel() })
+	return last
+}
+
 // BenchmarkTiledDrag is what a drag of a tiled surface asks for at each step: the
 // levels with coarser tiles.
 func BenchmarkTiledDrag(b *testing.B) {
@@ -322,16 +330,10 @@ func BenchmarkTiledDrag(b *testing.B) {
 			a := project.Absorber{ID: "X", Surface: acoustics.Ceiling, Centre: [2]float64{1.9, 1.9}, Size: [2]float64{side, side}, Units: 1}.OfKind("porous")
 			p = p.AddAbsorber(a)
 			o := Options{Points: 400, ModesToHz: 250, Coarse: true}
-			levels := func(q project.Project, former *Result) (last *Result) {
-				ctx, cancel := context.WithCancel(context.Background())
-				defer cancel()
-				Run(ctx, q, o, former, func(r *Result) { last = r; cancel() })
-				return last
-			}
-			r := levels(p, nil)
+			r := asFarAsLevels(p, o, nil)
 			for i := 0; b.Loop(); i++ {
 				a.Centre[0] = 1.9 + 0.01*float64(i%30)
-				r = levels(p.WithAbsorber(2, a), r)
+				r = asFarAsLevels(p.WithAbsorber(2, a), o, r)
 			}
 		})
 	}
@@ -348,16 +350,10 @@ func BenchmarkOneOfTwenty(b *testing.B) {
 		p = p.AddAbsorber(a)
 	}
 	o := Options{Points: 400, ModesToHz: 250}
-	levels := func(q project.Project, former *Result) (last *Result) {
-		ctx, cancel := context.WithCancel(context.Background())
-		defer cancel()
-		Run(ctx, q, o, former, func(r *Result) { last = r; cancel() })
-		return last
-	}
-	r := levels(p, nil)
+	r := asFarAsLevels(p, o, nil)
 	for i := 0; b.Loop(); i++ {
 		q := p.Clone()
 		q.Absorbers[1].Panel.CavityMM = 80 + float64(i%40)
-		r = levels(q, r)
+		r = asFarAsLevels(q, o, r)
 	}
 }

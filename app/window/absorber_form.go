@@ -275,7 +275,8 @@ func absorberWords(a study.AbsorberRow, s State) string {
 		t = append(t, "Broadband: there is no oscillator.")
 	}
 	if c := a.Section; c != nil {
-		t = append(t, fmt.Sprintf("One unit alone in a wall takes in %s of a plane wave at resonance, %.0f %% of the ceiling λ²/2π.", units.Area(c.Area, s.system()), 100*c.Area/c.Ceiling))
+		t = append(t, fmt.Sprintf("One unit alone in a wall takes in %s of a plane wave at resonance, %.0f %% of the ceiling λ²/2π. In a diffuse field it is worth at most λ²/π, %s, in any place.",
+			units.Area(c.Area, s.system()), 100*c.Area/c.Ceiling, units.Area(c.Diffuse, s.system())))
 	}
 	var practical []string
 	for _, p := range a.Report.Practical {

@@ -3,6 +3,7 @@ package window
 import (
 	"context"
 	"fmt"
+	"slices"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -114,12 +115,12 @@ func (w wishes) request(s State) (study.TuneRequest, error) {
 	}
 	q.MostUnits = int(n)
 	for _, k := range tuning.Kinds() {
-		if contains(w.kinds.Selected, sheets.KindWords(k)) {
+		if slices.Contains(w.kinds.Selected, sheets.KindWords(k)) {
 			q.Kinds = append(q.Kinds, k)
 		}
 	}
 	for _, x := range acoustics.Surfaces() {
-		if contains(w.surfaces.Selected, x.String()) {
+		if slices.Contains(w.surfaces.Selected, x.String()) {
 			q.Surfaces = append(q.Surfaces, x)
 		}
 	}
@@ -130,15 +131,6 @@ func (w wishes) request(s State) (study.TuneRequest, error) {
 		return q, fmt.Errorf("choose a surface")
 	}
 	return q, nil
-}
-
-func contains(list []string, s string) bool {
-	for _, x := range list {
-		if x == s {
-			return true
-		}
-	}
-	return false
 }
 
 func tuneColumns() []scheduleColumn {

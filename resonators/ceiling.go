@@ -1,4 +1,4 @@
-package tuning
+package resonators
 
 import "math"
 
@@ -20,7 +20,7 @@ const (
 // the radiation resistance doubles with each surface.
 func PlaneWaveCeiling(p Place, hz, c float64) float64 {
 	if p < InWall || p > InCorner {
-		panic("tuning: no such place")
+		panic("resonators: no such place")
 	}
 	return sq(c/hz) / (2 * math.Pi) * float64(int(1)<<(p-InWall))
 }
