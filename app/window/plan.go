@@ -41,6 +41,7 @@ func (c *controller) planAll() {
 	t := &planner{c: c, say: widget.NewLabel("Brings the problem modes under their limits, the worst first.")}
 	t.say.Wrapping = fyne.TextWrapWord
 	t.list = newSchedule(planColumns(), func(int) {})
+	t.list.show(nil, -1, c.state.Dark)
 	t.ask = newWishes(c.state, "")
 	t.absorbers = newPathEntry("8", nil, nil)
 	t.upTo = newPathEntry("120 Hz", nil, nil)

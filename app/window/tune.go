@@ -147,6 +147,7 @@ func (c *controller) tune(mode int) {
 	m := c.state.Result.Modes[mode]
 	t.about.Wrapping = fyne.TextWrapWord
 	t.list = newSchedule(tuneColumns(), t.pick)
+	t.list.show(nil, -1, c.state.Dark)
 	t.ask = newWishes(c.state, fmt.Sprintf("%.2f s", m.LimitS))
 	t.ask.each(t.search, func() { t.close() })
 	head := widget.NewLabel(fmt.Sprintf("Mode %s, %s, rings %s against a limit of %s. Its pressure is greatest %s.", m.Mode, units.Hertz(m.Mode.Hz),
