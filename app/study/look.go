@@ -127,20 +127,6 @@ func heard(own, near []PoleRow) []PoleRow {
 	return list
 }
 
-// peakNear returns the highest treated level within a sixth of an octave of a
-// frequency at any seat, dB.
-func (r *Result) peakNear(hz float64) float64 {
-	top := math.Inf(-1)
-	for _, seat := range r.Levels.Treated {
-		for i, f := range r.Levels.Hz {
-			if math.Abs(math.Log2(f/hz)) < 1.0/6 {
-				top = math.Max(top, seat[i])
-			}
-		}
-	}
-	return top
-}
-
 // weathered is how many of the best proposals are looked at more closely: in air colder
 // and warmer by weatherC, and for what they do to the neighbours.
 const (
@@ -181,17 +167,13 @@ func (r *Result) weather(ctx context.Context, q TuneRequest, p *Proposal) error 
 	return nil
 }
 
-// tolerances returns each dimension's pull and how far it may be off while f0 moves
-// by no more than half of the half-power width of the treated pair's slowest pole.
+// tolerances returns how far dimensions may be off, by the slowest of the poles that
+// an absorber and its mode have; none where there is no pole.
 func tolerances(pulls []resonators.Sensitivity, after []PoleRow) []tuning.Tolerance {
 	if len(after) == 0 {
 		return nil
 	}
-	var list []tuning.Tolerance
-	for _, s := range pulls {
-		list = append(list, tuning.Tolerance{Sensitivity: s, Allowed: s.Tolerance(after[0].Oscillator.HalfPowerWidth() / 2)})
-	}
-	return list
+	return tuning.Tolerances(pulls, after[0].Oscillator.HalfPowerWidth())
 }
 
 // Tolerances returns how far each dimension of a placed absorber may be off: while f0

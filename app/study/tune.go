@@ -38,8 +38,9 @@ type Proposal struct {
 	// After are the poles that mode and absorber have in the treated room as a
 	// whole, longest decay first, those that no seat hears left out.
 	After []PoleRow
-	// PeakBefore and PeakAfter are the highest treated levels within a sixth of an
-	// octave of the mode at any seat, without and with the proposal, dB.
+	// PeakBefore and PeakAfter are the highest treated levels within about a sixth of an
+	// octave of the mode at any seat, without and with the proposal, dB, at the same
+	// frequencies.
 	PeakBefore, PeakAfter float64
 	Neighbours            []Neighbour // modes within a third of an octave; of the best few
 	VolumeM3, SheetM2     float64     // of all units
@@ -220,7 +221,7 @@ func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Pr
 		return Proposal{}, false, err
 	}
 	p := Proposal{Absorber: a, Candidate: c, MinVolumeM3: c.LeastVolume, MinAreaM2: c.LeastArea, Before: m.Oscillator,
-		Spot: spot(r.Room.Box, c.At), VolumeM3: Volume(a), SheetM2: SheetArea(a), PeakBefore: r.peakNear(m.Mode.Hz)}
+		Spot: spot(r.Room.Box, c.At), VolumeM3: Volume(a), SheetM2: SheetArea(a)}
 	b := r.newBench(q)
 	field, err := b.place(ctx, a)
 	if err != nil {
@@ -242,6 +243,9 @@ func (r *Result) try(ctx context.Context, q TuneRequest, c tuning.Candidate) (Pr
 	}
 	p.After = seen.after()
 	p.Meets = p.Longest() <= r.target(q)
+	if p.PeakBefore, err = b.peak(ctx, r.stages.field.field); err != nil {
+		return p, false, err
+	}
 	if p.PeakAfter, err = b.peak(ctx, field); err != nil {
 		return p, false, err
 	}

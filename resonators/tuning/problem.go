@@ -77,8 +77,6 @@ type Candidate struct {
 	Pair [2]acoustics.Oscillator
 	// Meets reports whether both of the pair decay within the target.
 	Meets bool
-	// Tolerances of each dimension.
-	Tolerances []Tolerance
 }
 
 // Build holds what a joiner needs beside the absorber's acoustic values.
@@ -98,6 +96,16 @@ type Build struct {
 type Tolerance struct {
 	resonators.Sensitivity
 	Allowed float64 // ±, SI
+}
+
+// Tolerances returns how far each dimension may be off while f0 moves by no more than
+// half of a half-power width in Hz: that of the pair's slower pole.
+func Tolerances(pulls []resonators.Sensitivity, width float64) []Tolerance {
+	var list []Tolerance
+	for _, s := range pulls {
+		list = append(list, Tolerance{Sensitivity: s, Allowed: s.Tolerance(width / 2)})
+	}
+	return list
 }
 
 // target returns the T60 asked for, s.

@@ -52,11 +52,7 @@ func Propose(ctx context.Context, p Problem) ([]Candidate, error) {
 			}
 		}
 	}
-	out = p.shortList(out, kinds, cmp.Or(p.Most, 12))
-	for i := range out {
-		out[i].Tolerances = p.tolerances(out[i])
-	}
-	return out, ctx.Err()
+	return p.shortList(out, kinds, cmp.Or(p.Most, 12)), ctx.Err()
 }
 
 // shortList keeps the best, an equal share of each kind where there are enough,
@@ -242,19 +238,4 @@ func (p Problem) solve(lo, hi, hz float64, at resonators.Placement, make func(fl
 		}
 	}
 	return (lo + hi) / 2, true
-}
-
-// tolerances returns each dimension's pull and how far it may be off while f0
-// moves by no more than half of the half-power width of the pair's slower pole.
-func (p Problem) tolerances(c Candidate) []Tolerance {
-	var out []Tolerance
-	room := c.Pair[0].HalfPowerWidth() / 2
-	for _, s := range resonators.Sensitivities(c.Absorber, p.Air, c.At.Size) {
-		t := Tolerance{Sensitivity: s, Allowed: math.Inf(1)}
-		if s.F0PerStep != 0 {
-			t.Allowed = math.Abs(room / s.F0PerStep * s.Step)
-		}
-		out = append(out, t)
-	}
-	return out
 }

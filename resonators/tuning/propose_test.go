@@ -67,7 +67,7 @@ func TestProposalsCanBeBuilt(t *testing.T) {
 		if c.At.Surface == acoustics.Left && lo[0] < 1-1e-6 && lo[1] < 2-1e-6 {
 			t.Errorf("%d: %+v lies on what is there", i, c.At)
 		}
-		for _, tol := range c.Tolerances {
+		for _, tol := range Tolerances(resonators.Sensitivities(c.Absorber, p.Air, c.At.Size), c.Pair[0].HalfPowerWidth()) {
 			if !math.IsInf(tol.Allowed, 1) && math.Abs(tol.Allowed*tol.F0Derivative()) > c.Pair[0].HalfPowerWidth()/2*1.001 {
 				t.Errorf("%d: %s may be off by %v", i, tol.Dimension, tol.Allowed)
 			}
