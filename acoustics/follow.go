@@ -14,6 +14,8 @@ type follower struct {
 	rhs []complex128
 	// springs is the power of ω that the determinant's phase is taken with.
 	springs int
+	// whole takes delays by the whole of a complex frequency.
+	whole bool
 }
 
 func (f *Field) newFollower(distants []distant) *follower {

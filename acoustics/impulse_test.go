@@ -132,9 +132,11 @@ func TestPartialsAreThePressuresPoles(t *testing.T) {
 }
 
 // The bare partials are those that the pole search finds without units, residues
-// and all.
+// and all, whatever the loudspeakers' delays.
 func TestBarePartialsAreTheUntouchedPoles(t *testing.T) {
-	f := studioField(t, nil)
+	sources := studioSources()
+	sources[0].Delay, sources[1].Delay = 0.004, 0.021
+	f := newTestField(t, studio(t), sources, []Point{{2.9, 1.93, 1.2}}, nil, 1)
 	p, err := f.Poles(context.Background(), 120, nil)
 	if err != nil {
 		t.Fatal(err)

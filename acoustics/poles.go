@@ -244,7 +244,7 @@ func (f *Field) listed(ctx context.Context, paths []path, upTo float64, edge rec
 						Oscillator: Oscillator{Natural: cmplx.Abs(a.root) / (2 * math.Pi), Decay: imag(a.root)},
 						LevelDB:    residueLevels(residues, a.root),
 						Omega:      a.root,
-						Residues:   residues,
+						Residues:   r.delayed(&a, residues),
 					}
 				}
 			}

@@ -10,7 +10,8 @@ import (
 const residueStep = 1e-7
 
 // residues returns the residue of the pressure at each seat at a pole, 0 where
-// the pole is nothing there.
+// the pole is nothing there, with delays by the real part of its frequency, as levels
+// are reckoned.
 func (w *follower) residues(a *path) []complex128 {
 	if a.mode >= 0 {
 		return w.modeResidues(a)
@@ -122,7 +123,11 @@ func (w *follower) driven(wave func(port int) complex128) (sum complex128, whole
 	var most, gains float64
 	for q, s := range w.f.sources {
 		v := wave(q)
-		sum += w.t.drive(q) * v
+		amplitude := w.t.drive(q)
+		if w.whole {
+			amplitude = complex(s.Gain, 0) * cmplx.Exp(-1i*w.t.omega*complex(s.Delay, 0))
+		}
+		sum += amplitude * v
 		gains += math.Abs(s.Gain)
 		most = math.Max(most, cmplx.Abs(v))
 	}
@@ -146,4 +151,19 @@ func residueLevels(residues []complex128, root complex128) []float64 {
 		}
 	}
 	return levels
+}
+
+// delayed returns the true residues, with delays by the pole's whole frequency, given
+// those by its real part: the same where nothing is delayed.
+func (w *follower) delayed(a *path, residues []complex128) []complex128 {
+	late := false
+	for _, s := range w.f.sources {
+		late = late || s.Delay != 0
+	}
+	if !late {
+		return residues
+	}
+	w.whole = true
+	defer func() { w.whole = false }()
+	return w.residues(a)
 }
